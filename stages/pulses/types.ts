@@ -1,0 +1,67 @@
+/** Why a pulse is doubted, bit by bit; words in flags.ts. */
+export const PulseFlag = {
+  NoData: 1,
+  RiseTooSmall: 2,
+  RiseTooLarge: 4,
+  DriftTooStrong: 8,
+  NotSettled: 16,
+  SamplesMissing: 32,
+  Spikes: 64,
+  OutsideCalibration: 128,
+  HeaterResistance: 256,
+  Truncated: 512,
+  Vetoed: 1024,
+  ZeroEnergy: 2048,
+} as const;
+
+export type PulseMethod = "drift" | "two-body" | "relaxation";
+
+/** One row a pulse. Every column has length n. */
+export interface PulseTable {
+  /** 1-based number in the heater log. */
+  readonly pulse: Int32Array;
+  readonly start_s: Float64Array;
+  readonly duration_s: Float64Array;
+  readonly T_before_K: Float64Array;
+  readonly T_after_K: Float64Array;
+  /** (T_before + T_after)/2, to which C belongs. */
+  readonly T_K: Float64Array;
+  readonly dT_K: Float64Array;
+  /** Repeatability of dT from the drift fits, k = 1. */
+  readonly u_dT_K: Float64Array;
+  /** Heat that reached the cell, lead heat included. */
+  readonly Q_J: Float64Array;
+  /** Repeatability of Q (readings, pulse length), k = 1. */
+  readonly u_Q_J: Float64Array;
+  /** Share of Q that came from the leads. */
+  readonly lead_heat_J: Float64Array;
+  readonly heater_resistance_Ohm: Float64Array;
+  readonly C_total_J_per_K: Float64Array;
+  /** Repeatability, k = 1. */
+  readonly u_C_total_J_per_K: Float64Array;
+  readonly method: readonly PulseMethod[];
+  /** Bits of PulseFlag. */
+  readonly flag: Int32Array;
+  /** "" or the reason of a veto, as written in run.yaml. */
+  readonly reason: readonly string[];
+  /** 1 where the pulse goes on to the dataset. */
+  readonly used: Uint8Array;
+  readonly noise_K: Float64Array;
+  /** Drift before the pulse, at its start. */
+  readonly drift_K_per_s: Float64Array;
+  /** Skipped after the heater stopped. */
+  readonly settle_s: Float64Array;
+}
+
+/** What a figure of one pulse needs: samples thinned to a few hundred, fits on their own time axis. */
+export interface PulsePicture {
+  readonly pulse: number;
+  /** Seconds from the start of the pulse. */
+  readonly time_s: Float64Array;
+  readonly temperature_K: Float64Array;
+  readonly before: { readonly time_s: Float64Array; readonly temperature_K: Float64Array };
+  readonly after: { readonly time_s: Float64Array; readonly temperature_K: Float64Array };
+  /** Where the step is read, from the start of the pulse. */
+  readonly step_s: number;
+  readonly duration_s: number;
+}

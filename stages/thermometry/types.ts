@@ -1,0 +1,21 @@
+/** One night's cell temperature. Every column has length n, the thermometer log's own. */
+export interface TemperatureTrace {
+  readonly time_s: Float64Array;
+  /** NaN where `flag` is not 0. */
+  readonly temperature_K: Float64Array;
+  /** Bits of SampleFlag (ingest/types.ts). */
+  readonly flag: Uint8Array;
+}
+
+/** A thermometer's own R → T, whichever form it was given in. */
+export interface Calibration {
+  readonly form: "table" | "log-polynomial" | "chebyshev";
+  /** Name of the temperature scale; travels with the data. */
+  readonly scale: string;
+  readonly resistanceRange_Ohm: readonly [number, number];
+  readonly temperatureRange_K: readonly [number, number];
+  /** k = 1, taken as common to all temperatures. */
+  readonly u_temperature_K: number;
+  /** @returns K; NaN outside the calibrated range, never an extrapolation. */
+  temperature_K(resistance_Ohm: number): number;
+}
