@@ -12,6 +12,8 @@ export const PulseFlag = {
   Truncated: 512,
   Vetoed: 1024,
   ZeroEnergy: 2048,
+  VoltageInverted: 4096,
+  HeaterLeftOn: 8192,
 } as const;
 
 export type PulseMethod = "drift" | "two-body" | "relaxation";
@@ -27,6 +29,8 @@ export interface PulseTable {
   /** (T_before + T_after)/2, to which C belongs. */
   readonly T_K: Float64Array;
   readonly dT_K: Float64Array;
+  /** Width in T over which C is a mean; 0 where the method gives C at T itself. */
+  readonly mean_over_K: Float64Array;
   /** Repeatability of dT from the drift fits, k = 1. */
   readonly u_dT_K: Float64Array;
   /** Heat that reached the cell, lead heat included. */
@@ -51,6 +55,10 @@ export interface PulseTable {
   readonly drift_K_per_s: Float64Array;
   /** Skipped after the heater stopped. */
   readonly settle_s: Float64Array;
+  /** Where the step is read, after the start of the pulse. */
+  readonly step_s: Float64Array;
+  /** Samples left out as spikes, of those under both fits. */
+  readonly spikes: Int32Array;
 }
 
 /** What a figure of one pulse needs: samples thinned to a few hundred, fits on their own time axis. */

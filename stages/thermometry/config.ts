@@ -1,0 +1,122 @@
+import { z } from "zod";
+import { formatSchema } from "../ingest/config.js";
+import { columnOf, name, quantity, text } from "../quantities/schema.js";
+import type { Quantity } from "../quantities/types.js";
+
+const standardUncertainty = quantity("temperature", {
+  description: "Standard uncertainty (k = 1) of the calibration, common to all temperatures.",
+  example: "0.4 mK",
+  sign: "not-negative",
+});
+
+const coefficients = (description: string) =>
+  z
+    .array(z.number())
+    .min(2)
+    .meta({ description, shown: ["[1.62, -0.81, 0.043]"] });
+
+const resistanceRange = z
+  .tuple([
+    quantity("resistance", {
+      description: "Lowest resistance calibrated.",
+      sign: "positive",
+      example: "210 Ohm",
+    }),
+    quantity("resistance", {
+      description: "Highest resistance calibrated.",
+      sign: "positive",
+      example: "48 kOhm",
+    }),
+  ])
+  .check((context) => {
+    const [low, high] = context.value;
+    if (low.value < high.value) return;
+    context.issues.push({
+      code: "custom",
+      input: context.value,
+      message: "range upside down",
+      params: { expected: "the lower resistance first", wayOut: `write [${high.text}, ${low.text}]` },
+    });
+  })
+  .meta({
+    description: "Range of the calibration; outside it there is no temperature, never an extrapolation.",
+    shown: ["[210 Ohm, 48 kOhm]"],
+  });
+
+const table = z.strictObject({
+  form: z.literal("table").meta({ description: "A table of resistances and temperatures." }),
+  file: text({ description: "The table.", example: "ge-31.csv" }),
+  temperature: columnOf("temperature", "Column with the temperature."),
+  resistance: columnOf("resistance", "Column with the resistance."),
+  standard_uncertainty: standardUncertainty,
+  format: formatSchema,
+});
+
+const logPolynomial = z.strictObject({
+  form: z.literal("log-polynomial").meta({ description: "ln T = Σ aᵢ (ln R)ⁱ with T in K and R in Ohm." }),
+  coefficients: coefficients("a₀, a₁, … of ln T = Σ aᵢ (ln R)ⁱ, T in K, R in Ohm."),
+  resistance_range: resistanceRange,
+  standard_uncertainty: standardUncertainty,
+});
+
+const chebyshev = z
+  .strictObject({
+    form: z
+      .literal("chebyshev")
+      .meta({ description: "Σ aᵢ cos(i·arccos x), x the variable scaled to −1…1." }),
+    coefficients: coefficients(
+      "a₀, a₁, … of Σ aᵢ cos(i·arccos x), a₀ not halved; x = [(Z − Zl) − (Zu − Z)]/(Zu − Zl), R in Ohm, T in K.",
+    ),
+    variable: z
+      .enum(["ln R", "log10 R"])
+      .meta({ description: "Z, the variable of the series.", shown: ["log10 R"] }),
+    variable_range: z
+      .tuple([z.number(), z.number()])
+      .check((context) => {
+        if (context.value[0] < context.value[1]) return;
+        context.issues.push({
+          code: "custom",
+          input: context.value,
+          message: "range upside down",
+          params: {
+            expected: "Zl below Zu",
+            wayOut: `write [${Math.min(...context.value)}, ${Math.max(...context.value)}], if the two differ`,
+          },
+        });
+      })
+      .meta({ description: "[Zl, Zu], which are scaled to −1 and 1.", shown: ["[2.3, 4.7]"] }),
+    quantity: z.enum(["T", "ln T", "log10 T"]).meta({ description: "What the series gives.", shown: ["T"] }),
+    resistance_range: resistanceRange.optional(),
+    standard_uncertainty: standardUncertainty,
+  })
+  .transform((series) => ({
+    ...series,
+    resistance_range: series.resistance_range ?? wholeRange(series.variable, series.variable_range),
+  }));
+
+/** Where no range is given, the series holds over the whole range of its variable. */
+function wholeRange(variable: "ln R" | "log10 R", range: readonly [number, number]): [Quantity, Quantity] {
+  const end = (z: number): Quantity => {
+    const value = variable === "ln R" ? Math.exp(z) : 10 ** z;
+    return { value, u: 0, text: `${value} Ohm` };
+  };
+  return [end(range[0]), end(range[1])];
+}
+
+export const thermometerSchema = z.strictObject({
+  version: z.literal(1).default(1).meta({ description: "Version of this file's form." }),
+  thermometer: name({ description: "Name of the thermometer.", example: "ge-31" }),
+  scale: text({
+    description: "Temperature scale of the calibration; its name travels with the data.",
+    example: "ITS-90",
+  }),
+  calibration: z
+    .discriminatedUnion("form", [table, logPolynomial, chebyshev])
+    .meta({ description: "Resistance to temperature: a table, a log-polynomial or a chebyshev series." }),
+});
+
+export type ThermometerConfig = z.output<typeof thermometerSchema>;
+export type CalibrationConfig = ThermometerConfig["calibration"];
+export type TableCalibrationConfig = Extract<CalibrationConfig, { form: "table" }>;
+export type LogPolynomialConfig = Extract<CalibrationConfig, { form: "log-polynomial" }>;
+export type ChebyshevConfig = Extract<CalibrationConfig, { form: "chebyshev" }>;
