@@ -1,6 +1,7 @@
 import { z } from "zod";
 import { runSchema } from "../../stages/ingest/config.js";
 import { cellSchema, sampleSchema } from "../../stages/molar/config.js";
+import { scenarioSchema } from "../../stages/simulate/config.js";
 import { thermometerSchema } from "../../stages/thermometry/config.js";
 import { campaignSchema } from "./campaign-schema.js";
 import type { Kind } from "./kind.js";
@@ -35,13 +36,21 @@ const SCHEMAS = {
   sample: sampleSchema,
   thermometer: thermometerSchema,
   run: runSchema,
+  scenario: scenarioSchema,
 } as const;
 
-export type SchemaOf<K extends Kind> = K extends keyof typeof SCHEMAS ? (typeof SCHEMAS)[K] : z.ZodType;
+export type SchemaOf<K extends Kind> = (typeof SCHEMAS)[K];
 
 /** The schema that files of a kind are read by. */
 export function schemaOf(kind: Kind): z.ZodType {
-  return SCHEMAS[kind as keyof typeof SCHEMAS];
+  return SCHEMAS[kind];
+}
+
+/** What stages/quantities/schema.ts puts into a schema's metadata. */
+interface Shown {
+  readonly shown?: readonly unknown[];
+  readonly dimension?: string;
+  maximum?: number;
 }
 
 /** JSON Schema (2020-12) of a kind of file as a person writes it: quantities are texts, defaults optional. */
@@ -51,7 +60,9 @@ export function jsonSchema(kind: Kind): JsonSchema {
     reused: "inline",
     override: ({ jsonSchema: node }) => {
       // zod drops `examples` where a value is transformed on reading; our schemas keep them under `shown`.
-      const { shown, dimension: _, ...rest } = node as Record<string, unknown> & { shown?: unknown[] };
+      const { shown, dimension: _, ...rest } = node as Shown;
+      // The largest safe integer is a bound of the computer, not of the key.
+      if (rest.maximum === Number.MAX_SAFE_INTEGER) delete rest.maximum;
       for (const key of Object.keys(node)) delete node[key as keyof typeof node];
       Object.assign(node, rest, shown === undefined ? {} : { examples: shown });
     },

@@ -50,7 +50,8 @@ export function addendaFromParts(parts: readonly CellPart[]): Addenda {
 
   const heatCapacity = (T_K: number) =>
     merged.reduce(
-      (sum, { material, mass }) => sum + mass.value * extrapolatedSpecificHeat_J_per_kg_K(material, T_K).value,
+      (sum, { material, mass }) =>
+        sum + mass.value * extrapolatedSpecificHeat_J_per_kg_K(material, T_K).value,
       0,
     );
   return {

@@ -244,9 +244,10 @@ export const runSchema = z
     veto: vetoSchema,
   })
   .check((context) => {
-    const { exclude, veto } = context.value;
+    const { exclude, veto, logs } = context.value;
+    const { zone: zoneOfNight } = logs.thermometer.time;
     exclude.forEach(({ from, to }, i) => {
-      const [a, b] = [withEpoch(from, "UTC"), withEpoch(to, "UTC")];
+      const [a, b] = [withEpoch(from, zoneOfNight), withEpoch(to, zoneOfNight)];
       const backwards =
         (a.kind === "elapsed" && b.kind === "elapsed" && !(a.time_s < b.time_s)) ||
         (a.kind === "instant" && b.kind === "instant" && !(a.epoch_s < b.epoch_s));

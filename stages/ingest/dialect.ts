@@ -188,7 +188,10 @@ function missingColumn(
     file,
     line: lines[seen.at]!.number,
     column: absent,
-    expected: `one of the headings ${seen.cells.filter((cell) => cell !== "").map((cell) => JSON.stringify(cell)).join(", ")}`,
+    expected: `one of the headings ${seen.cells
+      .filter((cell) => cell !== "")
+      .map((cell) => JSON.stringify(cell))
+      .join(", ")}`,
     wayOut: near === undefined ? "name one of these in column:" : `write column: ${JSON.stringify(near)}`,
   });
 }
@@ -200,17 +203,23 @@ function findFirstRow(
   candidates: readonly Delimiter[],
   comment: string,
 ): { at: number; delimiter: Delimiter } | null {
+  let short: { at: number; delimiter: Delimiter } | null = null;
   for (let at = 0; at < lines.length; at++) {
     const { text } = lines[at]!;
     if (comment !== "" && text.startsWith(comment)) continue;
+    let most = 1;
     for (const delimiter of candidates) {
       const cells = splitLine(text, delimiter);
       const wanted = numbers.map((number) => cells[number - 1] ?? "");
-      if (wanted.some(looksLikeData) && wanted.every((cell) => cell === "" || looksLikeData(cell)))
-        return { at, delimiter };
+      if (!wanted.some(looksLikeData) || !wanted.every((cell) => cell === "" || looksLikeData(cell)))
+        continue;
+      if (cells.length >= Math.max(...numbers)) return { at, delimiter };
+      // Kept for the message that there are too few columns.
+      if (short === null || (short.at === at && cells.length > most)) short = { at, delimiter };
+      most = Math.max(most, cells.length);
     }
   }
-  return null;
+  return short;
 }
 
 function mostCommon(counts: readonly number[]): number {
@@ -238,10 +247,17 @@ function detectDecimal(
     for (let k = 0; k < indices.length; k++) {
       if (wanted[k]!.holds !== "number") continue;
       const value = cells[indices[k]!] ?? "";
-      const mark = NUMBER_LIKE.test(value) ? (value.includes(".") ? "." : value.includes(",") ? "," : "") : "";
+      const mark = NUMBER_LIKE.test(value)
+        ? value.includes(".")
+          ? "."
+          : value.includes(",")
+            ? ","
+            : ""
+        : "";
       if (mark === ".") points++;
       if (mark === ",") commas++;
-      if (mark !== "" && mark !== format.decimal) against ??= { line: line.number, column: wanted[k]!.column, value };
+      if (mark !== "" && mark !== format.decimal)
+        against ??= { line: line.number, column: wanted[k]!.column, value };
     }
   if (format.decimal === "auto") return commas > points ? "," : ".";
   const fitting = format.decimal === "." ? points : commas;
@@ -250,7 +266,7 @@ function detectDecimal(
       file,
       ...against,
       expected: `a number with the decimal mark "${format.decimal}", as format: says`,
-      wayOut: 'write decimal: auto, or the mark that the file has',
+      wayOut: "write decimal: auto, or the mark that the file has",
     });
   return format.decimal;
 }
@@ -260,7 +276,9 @@ function detectDecimal(
  * words, none of them data. At most three are taken for such.
  */
 function rowsOfWords(rows: readonly HeadRow[], indices: readonly number[]): number {
-  const first = rows.slice(0, 4).findIndex(({ cells }) => indices.some((index) => looksLikeData(cells[index] ?? "")));
+  const first = rows
+    .slice(0, 4)
+    .findIndex(({ cells }) => indices.some((index) => looksLikeData(cells[index] ?? "")));
   return first < 0 ? (rows.length === 1 ? 1 : 0) : first;
 }
 
@@ -283,8 +301,16 @@ export function detectDialect(
   file: string,
 ): Dialect {
   if (head.trim() === "")
-    throw new InputError({ file, expected: "a log, but the file is empty", wayOut: "copy the log again, or leave this night out" });
-  if (format.comment !== "" && format.delimiter !== "auto" && format.comment === delimiterText(format.delimiter))
+    throw new InputError({
+      file,
+      expected: "a log, but the file is empty",
+      wayOut: "copy the log again, or leave this night out",
+    });
+  if (
+    format.comment !== "" &&
+    format.delimiter !== "auto" &&
+    format.comment === delimiterText(format.delimiter)
+  )
     throw new InputError({
       file,
       key: "format.comment",
@@ -295,7 +321,9 @@ export function detectDialect(
   const newline = detectNewline(head);
   const lines = linesOf(head, newline === "\r" ? "\r" : "\n");
   const candidates = format.delimiter === "auto" ? CANDIDATES : [format.delimiter];
-  const names = wanted.filter(({ column }) => columnNumber(column) === null).map(({ column }) => column.trim());
+  const names = wanted
+    .filter(({ column }) => columnNumber(column) === null)
+    .map(({ column }) => column.trim());
   const isComment = ({ text }: Line) => format.comment !== "" && text.trimStart().startsWith(format.comment);
 
   let heading: Heading | null = null;
@@ -336,9 +364,9 @@ export function detectDialect(
     const cells = splitLine(line.text, delimiter);
     if (cells.some((cell) => cell !== "")) rows.push({ cells, line });
   }
-  const indices = wanted.map(({ column }) => (columnNumber(column) ?? 0) - 1).map((index, k) =>
-    index >= 0 ? index : heading!.cells.indexOf(wanted[k]!.column.trim()),
-  );
+  const indices = wanted
+    .map(({ column }) => (columnNumber(column) ?? 0) - 1)
+    .map((index, k) => (index >= 0 ? index : heading!.cells.indexOf(wanted[k]!.column.trim())));
   const readIndices = indices.filter((_, k) => wanted[k]!.holds !== "present");
   if (heading !== null) rows.splice(0, rowsOfWords(rows, readIndices));
   const first = rows[0];
@@ -406,7 +434,11 @@ function rowWidth(
 }
 
 /** Why a cell is no number, in the words of an InputError. */
-export function numberFault(cell: string, mark: DecimalMark, what: string): { expected: string; wayOut?: string } {
+export function numberFault(
+  cell: string,
+  mark: DecimalMark,
+  what: string,
+): { expected: string; wayOut?: string } {
   const other: DecimalMark = mark === "." ? "," : ".";
   if (!Number.isNaN(parseNumber(cell, other)) && !hasThousandsSeparators(cell))
     return {

@@ -81,7 +81,7 @@ function joined(pieces: readonly Uint8Array[]): Uint8Array {
  */
 export async function* textPieces(source: LogSource, file: string): AsyncGenerator<string> {
   const pieces = typeof source === "string" || source instanceof Uint8Array ? single(source) : source;
-  let decoder: TextDecoder | null = null;
+  let decoder: InstanceType<typeof TextDecoder> | null = null;
   let waiting: Uint8Array[] = [];
   let waitingBytes = 0;
   let start = true;

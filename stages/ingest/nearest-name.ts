@@ -17,15 +17,20 @@ function editDistance(a: string, b: string): number {
   return last[b.length]!;
 }
 
-/** The name that `wanted` was probably meant to be, if any is near; capitals and blanks count little. */
+/**
+ * The name that `wanted` was probably meant to be, if any is near. Capitals, blanks and underscores do not count; of
+ * a name of one or two letters no letter may differ.
+ */
 export function nearestName(wanted: string, names: readonly string[]): string | undefined {
   const plain = (name: string) => name.toLowerCase().replace(/[\s_]+/g, "");
+  const goal = plain(wanted);
   let nearest: string | undefined;
-  let least = Math.max(1, Math.floor(wanted.length / 3)) + 0.5;
+  let least = Math.floor(goal.length / 3) + 0.75;
   for (const name of names) {
-    if (name === "") continue;
-    const startsAlike = plain(name).startsWith(plain(wanted)) || plain(wanted).startsWith(plain(name));
-    const distance = Math.min(editDistance(plain(wanted), plain(name)), startsAlike ? 1 : Number.POSITIVE_INFINITY);
+    const given = plain(name);
+    if (given === "") continue;
+    const startsAlike = given.startsWith(goal) || goal.startsWith(given);
+    const distance = Math.min(editDistance(goal, given), startsAlike ? 0.5 : Number.POSITIVE_INFINITY);
     if (distance < least) {
       least = distance;
       nearest = name;

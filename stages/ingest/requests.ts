@@ -12,7 +12,7 @@ export interface Reading {
 /** What to read for one log; several of them may share a file. */
 export interface LogRequest {
   readonly log: "thermometer" | "heater" | "stage";
-  readonly kind: "samples" | "events";
+  readonly kind: "sampled" | "events";
   readonly time: TimeColumn;
   readonly readings: readonly Reading[];
   /** Columns that must be there, but are not read. */
@@ -24,7 +24,7 @@ function heaterRequest(heater: LogsConfig["heater"]): LogRequest {
   const current: Reading = { column: heater.current, what: `a current in ${heater.current.unit}` };
   const voltage: Reading = { column: heater.voltage, what: `a voltage in ${heater.voltage.unit}` };
   const common = { log: "heater", time: heater.time, present: [], format: heater.format } as const;
-  if (heater.kind === "sampled") return { ...common, kind: "samples", readings: [current, voltage] };
+  if (heater.kind === "sampled") return { ...common, kind: "sampled", readings: [current, voltage] };
   const duration: Reading = {
     column: heater.duration,
     what: `a duration in ${heater.duration.unit}`,
@@ -44,7 +44,7 @@ export function requestsByFile(logs: LogsConfig): Map<string, LogRequest[]> {
   };
   add(thermometer.file, {
     log: "thermometer",
-    kind: "samples",
+    kind: "sampled",
     time: thermometer.time,
     readings: [
       {
@@ -60,10 +60,14 @@ export function requestsByFile(logs: LogsConfig): Map<string, LogRequest[]> {
   if (stage !== null)
     add(stage.file, {
       log: "stage",
-      kind: "samples",
+      kind: "sampled",
       time: stage.time,
       readings: [
-        { column: stage.temperature, what: `a temperature in ${stage.temperature.unit}`, bound: "above zero" },
+        {
+          column: stage.temperature,
+          what: `a temperature in ${stage.temperature.unit}`,
+          bound: "above zero",
+        },
       ],
       present: [],
       format: stage.format,

@@ -139,7 +139,11 @@ async function* rowBatches(
       continue;
     }
     const spaced = dialect.delimiter === "space";
-    const parsed: Papa.ParseResult<string[]> = parser.parse(spaced ? text.replaceAll("\t", " ") : text, 0, false);
+    const parsed: Papa.ParseResult<string[]> = parser.parse(
+      spaced ? text.replaceAll("\t", " ") : text,
+      0,
+      false,
+    );
     let rows = parsed.data;
     const plain =
       !text.includes('"') &&

@@ -13,7 +13,14 @@ function epochDay(year: number, month: number, day: number): number {
   const era = Math.floor(y / 400);
   const yearOfEra = y - era * 400;
   const dayOfYear = Math.floor((153 * (month + (month > 2 ? -3 : 9)) + 2) / 5) + day - 1;
-  return era * 146_097 + yearOfEra * 365 + Math.floor(yearOfEra / 4) - Math.floor(yearOfEra / 100) + dayOfYear - 719_468;
+  return (
+    era * 146_097 +
+    yearOfEra * 365 +
+    Math.floor(yearOfEra / 4) -
+    Math.floor(yearOfEra / 100) +
+    dayOfYear -
+    719_468
+  );
 }
 
 function daysInMonth(year: number, month: number): number {
@@ -77,5 +84,19 @@ export function timeExpectation(unit: TimeColumn["unit"]): string {
       return "an ISO 8601 time such as 2026-11-14T21:30:00.5";
     default:
       return `a time in ${unit}`;
+  }
+}
+
+/** How to mend an unreadable time cell. */
+export function timeWayOut(unit: TimeColumn["unit"]): string {
+  switch (unit) {
+    case "epoch":
+      return "write unit: epoch-ms if the log counts milliseconds, unit: iso8601 for dates, unit: s for times from the log's own zero";
+    case "epoch-ms":
+      return "write unit: epoch if the log counts seconds, or unit: iso8601 for dates";
+    case "iso8601":
+      return "have the instrument write year-month-day, or write unit: epoch or unit: s if these are numbers";
+    default:
+      return "write unit: iso8601 if these are dates, or add the span to exclude: in run.yaml";
   }
 }

@@ -60,12 +60,10 @@ export const sampleSchema = z
       example: "0.1093 ± 0.0004 mol",
     }).optional(),
     gas: gas.optional(),
-    condition: z
-      .enum(["constant-volume", "saturated-vapour"])
-      .meta({
-        description: "Closed volume filled with liquid, or liquid under its own vapour.",
-        shown: ["constant-volume"],
-      }),
+    condition: z.enum(["constant-volume", "saturated-vapour"]).meta({
+      description: "Closed volume filled with liquid, or liquid under its own vapour.",
+      shown: ["constant-volume"],
+    }),
     vapour_space: quantity("volume", {
       description: "Volume above the liquid; needed, and used, under saturated vapour only.",
       sign: "positive",

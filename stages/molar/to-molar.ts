@@ -15,7 +15,7 @@ import { constantVolumeFromSaturated_J_per_mol_K, vapourPart_J_per_K } from "./v
  *   Left out, the points themselves stand in: good enough to find the smooth curve with.
  * @returns points in the same order; Cv is the mean over each step, as the total was
  * @throws InputError if a saturated-vapour sample does not say its vapour space
- * @throws DomainError if a saturated-vapour point lies above 4.2 K
+ * @throws DomainError if a saturated-vapour point lies above 3.3 K
  */
 export function toMolar(
   points: TotalHeatCapacity,

@@ -44,10 +44,7 @@ export const ATOMIC_MASS: Constant = {
 const HELIUM4_RELATIVE_MASS = { value: 4.00260325413, u: 1.6e-10 };
 export const HELIUM4_ATOMIC_MASS: Constant = {
   value: HELIUM4_RELATIVE_MASS.value * ATOMIC_MASS.value,
-  u: Math.hypot(
-    HELIUM4_RELATIVE_MASS.u * ATOMIC_MASS.value,
-    HELIUM4_RELATIVE_MASS.value * ATOMIC_MASS.u,
-  ),
+  u: Math.hypot(HELIUM4_RELATIVE_MASS.u * ATOMIC_MASS.value, HELIUM4_RELATIVE_MASS.value * ATOMIC_MASS.u),
   unit: "kg",
   source: "m(4He) = 4.00260325413(16) u, AME2020 (from memory), times the atomic mass constant, CODATA 2022",
 };

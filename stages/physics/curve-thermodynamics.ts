@@ -18,7 +18,9 @@ export function entropyOfCurve_J_per_mol_K(
   curve: ExcitationCurve,
   molarVolume_m3_per_mol: number,
 ): number {
-  const integral = overCurve(T_K, curve, 2, boseEntropyKernel);
+  // k² ln k at the origin is not smooth: the trapezoid rule is ζ′(−2)h³ too low there, 0.14 % at 0.05 K.
+  const step = curve.wavenumber_per_m[1]!;
+  const integral = overCurve(T_K, curve, 2, boseEntropyKernel) + 0.030448457058393271 * step ** 3;
   return ((BOLTZMANN.value * molarVolume_m3_per_mol) / (2 * Math.PI ** 2)) * integral;
 }
 
@@ -30,5 +32,8 @@ export function normalDensityOfCurve_kg_per_m3(T_K: number, curve: ExcitationCur
 
 /** Number of excitations per volume, 1/m³: (1/2π²)∫k² n dk. */
 export function excitationDensity_per_m3(T_K: number, curve: ExcitationCurve): number {
-  return overCurve(T_K, curve, 2, boseOccupation) / (2 * Math.PI ** 2);
+  // k²n starts out as k·kT/(ħu₁), an odd power: Euler and Maclaurin's first correction, h²/12 times that slope.
+  const step = curve.wavenumber_per_m[1]!;
+  const slope = (step * T_K) / curve.energy_K[1]!;
+  return (overCurve(T_K, curve, 2, boseOccupation) + (step ** 2 / 12) * slope) / (2 * Math.PI ** 2);
 }

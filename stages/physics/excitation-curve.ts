@@ -20,7 +20,7 @@ const LONG_WAVES = { c_m_per_s: 238.3, alpha2: 1.55, alpha3: -4.04, alpha4: 2.3,
 function publishedEnergy_K(printed_1e4_meV: number, k: number): number {
   if (k > LONG_WAVES.upTo_per_angstrom) return printed_1e4_meV * 1e-4 * KELVIN_PER_MEV.value;
   // Four printed decimals of a meV are only two digits here, 0.25 % of C at 0.03 K. The source's own formula
-  // gives the same numbers to within half a unit of the last printed digit up to 0.1 1/Å.
+  // gives the same numbers to within 0.6 units of the last printed digit up to 0.1 1/Å.
   const { c_m_per_s, alpha2, alpha3, alpha4 } = LONG_WAVES;
   const slope_K = (PLANCK_REDUCED.value * c_m_per_s * 1e10) / BOLTZMANN.value;
   return slope_K * k * (1 + k * k * (alpha2 + k * (alpha3 + k * alpha4)));
@@ -41,7 +41,7 @@ export const PUBLISHED_CURVE: ExcitationCurve = {
 /**
  * Weights of the trapezoid rule on the curve's own points, length n.
  *
- * Good enough for all that follows: from k = 0 the integrands are even and smooth in k, where the rule converges
+ * Good enough for a heat capacity: from k = 0 its integrand is even and smooth in k, where the rule converges
  * exponentially, and at the far end they are e^{−18 K/T}. A step of 0.002 1/Å serves down to 0.01 K.
  */
 export function trapezoidWeights_per_m(wavenumber_per_m: Float64Array): Float64Array {

@@ -10,7 +10,8 @@ function lawPerKilogram(material: Material, T_K: number): number {
   switch (material.form) {
     case "powers": {
       let C = 0;
-      for (const { power, coefficient_J_per_mol } of material.terms) C += coefficient_J_per_mol * T_K ** power;
+      for (const { power, coefficient_J_per_mol } of material.terms)
+        C += coefficient_J_per_mol * T_K ** power;
       return C / material.molarMass_kg_per_mol;
     }
     case "log-polynomial": {

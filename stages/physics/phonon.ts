@@ -1,7 +1,7 @@
 import { DomainError } from "../errors.js";
 import { integrate } from "../numerics/quadrature.js";
 import { boseHeatKernel } from "./bose.js";
-import { AVOGADRO, BOLTZMANN, PLANCK_REDUCED } from "./constants.js";
+import { BOLTZMANN, PLANCK_REDUCED } from "./constants.js";
 
 const k = BOLTZMANN.value;
 const hbar = PLANCK_REDUCED.value;
@@ -42,7 +42,7 @@ export function soundSpeed_m_per_s(
 
 /**
  * Phonon heat capacity by its series in θ = kT/(ħu₁), to θ⁴ past the T³ law.
- * The series is asymptotic: with the measured dispersion of helium it is good to about 1 % at 0.4 K only.
+ * The series is asymptotic: helium's own, with the odd term too, is 0.05 % off at 0.3 K and 2 % low at 0.5 K.
  * @returns J/(mol K)
  * @see methods.md §5
  */
@@ -57,11 +57,11 @@ export function phononHeatCapacity_J_per_mol_K(T_K: number, branch: PhononBranch
 // n! ζ(n) = ∫₀^∞ xⁿ eˣ/(eˣ−1)² dx. Even ζ in closed form; ζ(7) and ζ(9) to all digits of a double.
 const zeta: Readonly<Record<number, number>> = {
   4: Math.PI ** 4 / 90,
-  5: 1.0369277551433699,
+  5: 1.03692775514337,
   6: Math.PI ** 6 / 945,
-  7: 1.0083492773819228,
+  7: 1.008349277381923,
   8: Math.PI ** 8 / 9450,
-  9: 1.0020083928260822,
+  9: 1.002008392826082,
   10: Math.PI ** 10 / 93555,
 };
 function boseMoment(n: number): number {

@@ -38,16 +38,18 @@ const HELIUM4_I: VapourPressureEquation = {
 /** The ends of a range belong to it, though they are printed with seven to ten digits. */
 const SLACK = 1e-6;
 
-/** T and dT/d(ln p). */
-function temperatureAndSlope(equation: VapourPressureEquation, lnp: number): readonly [number, number] {
+/** T, dT/d(ln p) and d²T/d(ln p)² by Horner's rule. */
+function polynomial(equation: VapourPressureEquation, lnp: number) {
   const x = (lnp - equation.B) / equation.C;
-  let T = 0;
+  let T_K = 0;
   let slope = 0;
+  let halfBend = 0;
   for (let i = equation.A.length - 1; i >= 0; i--) {
-    slope = slope * x + T;
-    T = T * x + equation.A[i]!;
+    halfBend = halfBend * x + slope;
+    slope = slope * x + T_K;
+    T_K = T_K * x + equation.A[i]!;
   }
-  return [T, slope / equation.C];
+  return { T_K, slope: slope / equation.C, bend: (2 * halfBend) / equation.C ** 2 };
 }
 
 function solveForPressure(equation: VapourPressureEquation, T_K: number): number {
@@ -57,8 +59,8 @@ function solveForPressure(equation: VapourPressureEquation, T_K: number): number
   const share = (1 / T1 - 1 / T_K) / (1 / T1 - 1 / T2);
   let lnp = Math.log(p1) + share * Math.log(p2 / p1);
   for (let step = 0; step < 50; step++) {
-    const [T, slope] = temperatureAndSlope(equation, lnp);
-    const change = (T_K - T) / slope;
+    const here = polynomial(equation, lnp);
+    const change = (T_K - here.T_K) / here.slope;
     lnp += change;
     if (Math.abs(change) < 1e-13) break;
   }
@@ -84,7 +86,13 @@ export function vapourPressureTemperature_K(pressure_Pa: number, isotope: Helium
   if (equation === undefined) {
     throw new DomainError(`ITS-90 gives no ${isotope} temperature for ${pressure_Pa} Pa`);
   }
-  return temperatureAndSlope(equation, Math.log(pressure_Pa))[0];
+  return polynomial(equation, Math.log(pressure_Pa)).T_K;
+}
+
+function equationOf(T_K: number, isotope: HeliumIsotope): VapourPressureEquation {
+  const equation = equationsOf(isotope).find((candidate) => within(candidate.range_K, T_K));
+  if (equation === undefined) throw new DomainError(`ITS-90 gives no ${isotope} vapour pressure at ${T_K} K`);
+  return equation;
 }
 
 /**
@@ -92,27 +100,56 @@ export function vapourPressureTemperature_K(pressure_Pa: number, isotope: Helium
  * @throws DomainError outside the scale's range: ³He 0.65 to 3.2 K, ⁴He 1.25 to 5.0 K
  */
 export function vapourPressure_Pa(T_K: number, isotope: HeliumIsotope): number {
-  const equation = equationsOf(isotope).find((candidate) => within(candidate.range_K, T_K));
-  if (equation === undefined) throw new DomainError(`ITS-90 gives no ${isotope} vapour pressure at ${T_K} K`);
-  return solveForPressure(equation, T_K);
+  return solveForPressure(equationOf(T_K, isotope), T_K);
 }
 
 /** Binding of an atom in the liquid at T = 0, per mole: Donnelly and Barenghi 1998, chapter 16. */
 export const LATENT_HEAT_AT_ZERO_J_PER_MOL = 59.83;
 
+/** The saturation line at one temperature. */
+export interface SaturationLine {
+  readonly pressure_Pa: number;
+  readonly slope_Pa_per_K: number;
+  readonly curvature_Pa_per_K2: number;
+}
+
 /**
- * Vapour pressure of ⁴He from 0 to 5 K, in Pa: the ITS-90 where it is defined (1.25 K up), and below it the
- * monatomic ideal gas in balance with a liquid of no entropy, p = kT (mkT/2πħ²)^{3/2} e^{−L₀/RT}.
+ * Vapour pressure of ⁴He from 0 to 5 K with its two derivatives: the ITS-90 where it is defined (1.25 K up), and below
+ * it the monatomic ideal gas in balance with a liquid of no entropy, p = kT (mkT/2πħ²)^{3/2} e^{−L₀/RT}.
  *
- * The lower formula meets the ITS-90 within 0.01 % at 1.25 K and the published table within 0.1 % from 0.65 K,
+ * The lower formula meets the ITS-90 within 0.02 % at 1.25 K and the published table within 0.1 % from 0.65 K,
  * since what it neglects (entropy of the liquid, second virial coefficient) nearly cancels.
  * @throws DomainError outside 0 < T ≤ 5 K
  */
-export function helium4VapourPressure_Pa(T_K: number): number {
-  if (T_K >= HELIUM4_II.range_K[0]) return vapourPressure_Pa(T_K, "helium-4");
+export function helium4SaturationLine(T_K: number): SaturationLine {
+  if (T_K >= HELIUM4_II.range_K[0]) return scaleLine(T_K);
   if (!(T_K > 0)) throw new DomainError(`no vapour pressure at ${T_K} K`);
   const k = BOLTZMANN.value;
+  const binding = LATENT_HEAT_AT_ZERO_J_PER_MOL / (GAS_CONSTANT.value * T_K);
   const perVolume =
     ((HELIUM4_ATOMIC_MASS.value * k * T_K) / (2 * Math.PI * PLANCK_REDUCED.value ** 2)) ** 1.5;
-  return k * T_K * perVolume * Math.exp(-LATENT_HEAT_AT_ZERO_J_PER_MOL / (GAS_CONSTANT.value * T_K));
+  const pressure_Pa = k * T_K * perVolume * Math.exp(-binding);
+  const lambda = 2.5 + binding; // d ln p/d ln T
+  return {
+    pressure_Pa,
+    slope_Pa_per_K: (pressure_Pa * lambda) / T_K,
+    curvature_Pa_per_K2: (pressure_Pa * (lambda * lambda - lambda - binding)) / (T_K * T_K),
+  };
+}
+
+/** Only the pressure of {@link helium4SaturationLine}. */
+export function helium4VapourPressure_Pa(T_K: number): number {
+  return helium4SaturationLine(T_K).pressure_Pa;
+}
+
+/** The ITS-90 polynomial gives T(ln p); its inverse's derivatives follow. */
+function scaleLine(T_K: number): SaturationLine {
+  const pressure_Pa = vapourPressure_Pa(T_K, "helium-4");
+  const { slope, bend } = polynomial(equationOf(T_K, "helium-4"), Math.log(pressure_Pa));
+  const logSlope = 1 / slope;
+  return {
+    pressure_Pa,
+    slope_Pa_per_K: pressure_Pa * logSlope,
+    curvature_Pa_per_K2: pressure_Pa * (logSlope ** 2 - bend * logSlope ** 3),
+  };
 }

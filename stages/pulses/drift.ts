@@ -23,6 +23,9 @@ export interface DriftFit {
 // (Beaton and Tukey, Technometrics 16, 147 (1974)).
 const BISQUARE = 4.685;
 
+/** Samples enough to give the drift one more degree without asking. */
+const SAMPLES_PER_DEGREE = 20;
+
 interface RobustFit {
   readonly fit: PolynomialFit;
   readonly residual: Float64Array;
@@ -68,7 +71,10 @@ function robustFit(samples: Samples, degree: number): RobustFit {
 export function fitDrift(samples: Samples, highestDegree: number): DriftFit {
   const n = samples.time_s.length;
   let best: { aicc: number; degree: number; robust: RobustFit; effective: number } | null = null;
-  for (let degree = 1; degree <= highestDegree; degree++) {
+  // A cell on a link always relaxes. With samples to spare the curve is let bend whether or not the bend stands out:
+  // leaving it out whenever it does not is a bias of 0.4 standard uncertainties (measured on simulated nights).
+  const lowestDegree = Math.min(highestDegree, Math.max(1, Math.floor(n / SAMPLES_PER_DEGREE)));
+  for (let degree = lowestDegree; degree <= highestDegree; degree++) {
     const robust = robustFit(samples, degree);
     const parameters = degree + 1;
     const effective = Math.max(parameters + 2.5, effectiveSampleSize(robust.residual));

@@ -48,7 +48,9 @@ export function quietStretch(samples: Samples, side: "start" | "end", least_s: n
     found.push({ skip, end });
     longest = Math.max(longest, end - skip);
   }
-  const chosen = found.find(({ skip, end }) => end - skip >= Math.max(FEWEST_BLOCKS, longest / 4));
+  const chosen = found.find(
+    ({ skip, end }) => end - skip >= Math.max(FEWEST_BLOCKS, Math.min(longest / 4, n / 8)),
+  );
   if (chosen === undefined) return null;
   const half = near.interval_s / 2;
   const a = Math.max(near.time_s[chosen.skip]! - half, samplesStart(near, samples, side) + least_s);
@@ -149,7 +151,8 @@ function inBlocks(samples: Samples): Blocks {
   const temperature_K = new Float64Array(count);
   for (let b = 0; b < count; b++) {
     const at = b * size;
-    time_s[b] = (samples.time_s[at]! + samples.time_s[at + size - 1]!) / 2;
+    // The middle sample's time: across a gap, half way between the ends is nowhere near the median sample.
+    time_s[b] = (samples.time_s[at + ((size - 1) >> 1)]! + samples.time_s[at + (size >> 1)]!) / 2;
     temperature_K[b] = medianOf(samples.temperature_K.slice(at, at + size));
   }
   const interval_s = count > 1 ? (time_s[count - 1]! - time_s[0]!) / (count - 1) : 0;

@@ -1,6 +1,6 @@
 import { InputError } from "../errors.js";
 import type { Quantity } from "./types.js";
-import { DIMENSIONS, type Dimension, expectedUnit, parseUnit } from "./units.js";
+import { DIMENSIONS, type Dimension, expectedUnit, parseUnit, usualUnit } from "./units.js";
 
 const NUMBER = String.raw`[+-]?(?:\d+\.?\d*|\.\d+)(?:[eE][+-]?\d+)?`;
 /** value [unit] [± uncertainty [%] [unit]], or (value ± uncertainty) unit */
@@ -13,6 +13,13 @@ const IN_BRACKETS = new RegExp(`^\\(\\s*(${NUMBER})\\s*±\\s*(${NUMBER})\\s*\\)\
  * @throws InputError with the value as written, the dimension wanted and a way out
  */
 export function parseQuantity(written: string, dimension: Dimension): Quantity {
+  if (/\d,\d/.test(written)) {
+    throw new InputError({
+      value: written,
+      expected: expectedUnit(dimension),
+      wayOut: `write a decimal point and no thousands separator: "${written.trim().replace(/(\d),(?=\d)/g, "$1.")}"`,
+    });
+  }
   const text = written
     .trim()
     .replace(/[\u00a0\u202f\u2009]/g, " ")
@@ -76,14 +83,8 @@ function inPercent(
 function numberAndRest(part: string, dimension: Dimension): readonly [number, string] {
   const text = part.trim();
   const match = PLAIN.exec(text);
-  const comma = /\d,\d/.test(text);
-  if (match === null || comma) {
-    throw refusal(
-      comma
-        ? `write a decimal point and no thousands separator, such as "${text.replace(/(\d),(\d)/, "$1.$2")}"`
-        : `write a number, then its unit, such as "${DIMENSIONS[dimension].example}"`,
-      dimension,
-    );
+  if (match === null) {
+    throw refusal(`write a number, then its unit, such as "${DIMENSIONS[dimension].example}"`, dimension);
   }
   return [Number(match[1]), match[2]!.trim()];
 }
@@ -91,7 +92,7 @@ function numberAndRest(part: string, dimension: Dimension): readonly [number, st
 function factorOf(unit: string, dimension: Dimension): number {
   if (unit !== "") return parseUnit(unit, dimension).factor;
   if (dimension === "dimensionless") return 1;
-  throw refusal(`add the unit, such as "${DIMENSIONS[dimension].example}"`, dimension);
+  throw refusal(`add the unit, such as ${usualUnit(dimension)}`, dimension);
 }
 
 function refusal(wayOut: string, dimension: Dimension): InputError {

@@ -2,7 +2,16 @@ import { z } from "zod";
 import { InputError } from "../errors.js";
 import { parseQuantity } from "./quantity.js";
 import type { Quantity } from "./types.js";
-import { DIMENSIONS, type Dimension, expectedUnit, findUnit, UNITS, unitFault, unitsOf } from "./units.js";
+import {
+  DIMENSIONS,
+  type Dimension,
+  expectedUnit,
+  findUnit,
+  UNITS,
+  unitFault,
+  unitsOf,
+  usualUnit,
+} from "./units.js";
 
 /*
  * Building blocks of every configuration schema. A value that is refused raises a zod issue whose `params`
@@ -86,7 +95,7 @@ function readQuantity(input: unknown, dimension: Dimension, options: QuantityOpt
     throw new InputError({ expected, wayOut: `give ${DIMENSIONS[dimension].noun}, such as "${example}"` });
   }
   if (typeof input === "number" && dimension !== "dimensionless") {
-    throw new InputError({ expected, wayOut: `add the unit, such as "${example}"` });
+    throw new InputError({ expected, wayOut: `add the unit, such as "${input} ${usualUnit(dimension)}"` });
   }
   if (typeof input !== "string" && typeof input !== "number") {
     throw new InputError({ expected, wayOut: `write one text, such as "${example}"` });
@@ -98,7 +107,7 @@ function readQuantity(input: unknown, dimension: Dimension, options: QuantityOpt
       : options.sign === "not-negative" && !(read.value >= 0)
         ? "not below 0"
         : options.atMost !== undefined && read.value > options.atMost
-          ? `at most ${options.atMost} ${DIMENSIONS[dimension].si}`
+          ? `at most ${options.atMost}${dimension === "dimensionless" ? "" : ` ${DIMENSIONS[dimension].si}`}`
           : undefined;
   if (bound !== undefined) {
     throw new InputError({ expected: `${expected}, ${bound}`, wayOut: `give a value such as "${example}"` });
@@ -157,9 +166,11 @@ export function columnOf(
       throw new InputError({
         expected: allowed.map(expectedUnit).join(", or "),
         wayOut:
-          typeof input === "string"
-            ? unitFault(input, allowed[0]!).wayOut
-            : `name the unit of the column's numbers, such as unit: ${example}`,
+          known !== undefined
+            ? `${known.symbol} is the unit of ${DIMENSIONS[known.dimension].noun}; did you mean another column, or unit: ${usualUnit(allowed[0]!)}?`
+            : typeof input === "string"
+              ? unitFault(input, allowed[0]!).wayOut
+              : `name the unit of the column's numbers, such as unit: ${example}`,
       });
     },
     {

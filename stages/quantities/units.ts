@@ -1,5 +1,13 @@
 import { InputError } from "../errors.js";
 
+interface DimensionWords {
+  readonly si: string;
+  readonly noun: string;
+  readonly example: string;
+  /** Units a message offers; by default the first of the table. */
+  readonly usual?: readonly string[];
+}
+
 /** What a quantity is, with its SI unit, how messages speak of it, and an example that works. */
 export const DIMENSIONS = {
   temperature: { si: "K", noun: "a temperature", example: "0.35 K" },
@@ -9,8 +17,8 @@ export const DIMENSIONS = {
   voltage: { si: "V", noun: "a voltage", example: "20 mV" },
   power: { si: "W", noun: "a power", example: "3 µW" },
   energy: { si: "J", noun: "an energy", example: "40 µJ" },
-  pressure: { si: "Pa", noun: "a pressure", example: "20 bar" },
-  volume: { si: "m3", noun: "a volume", example: "3.015 cm3" },
+  pressure: { si: "Pa", noun: "a pressure", example: "20 bar", usual: ["Pa", "hPa", "mbar", "bar"] },
+  volume: { si: "m3", noun: "a volume", example: "3.015 cm3", usual: ["cm3", "mL", "L", "m3"] },
   mass: { si: "kg", noun: "a mass", example: "24.1 g" },
   amount: { si: "mol", noun: "an amount of substance", example: "0.1093 mol" },
   "molar volume": { si: "m3/mol", noun: "a molar volume", example: "27.58 cm3/mol" },
@@ -23,7 +31,7 @@ export const DIMENSIONS = {
   "thermal resistance": { si: "K/W", noun: "a thermal resistance", example: "50 K/W" },
   frequency: { si: "Hz", noun: "a frequency", example: "10 Hz" },
   dimensionless: { si: "1", noun: "a plain number", example: "0.5" },
-} as const;
+} as const satisfies Readonly<Record<string, DimensionWords>>;
 
 export type Dimension = keyof typeof DIMENSIONS;
 
@@ -180,11 +188,18 @@ export function slips(a: string, b: string): number {
   return row[b.length]!;
 }
 
-/** "a temperature in K or mK": how a message speaks of a dimension. */
+/** "a temperature in K, mK or uK": how a message speaks of a dimension. */
 export function expectedUnit(dimension: Dimension): string {
-  const names = unitsOf(dimension).slice(0, 4);
+  const { noun, usual }: DimensionWords = DIMENSIONS[dimension];
+  if (dimension === "dimensionless") return `${noun}, or one in %`;
+  const names = [...(usual ?? unitsOf(dimension).slice(0, 4))];
   const last = names.pop()!;
-  return `${DIMENSIONS[dimension].noun} in ${names.length === 0 ? last : `${names.join(", ")} or ${last}`}`;
+  return `${noun} in ${names.length === 0 ? last : `${names.join(", ")} or ${last}`}`;
+}
+
+/** The unit of a dimension's example: the one the bench uses. */
+export function usualUnit(dimension: Dimension): string {
+  return DIMENSIONS[dimension].example.replace(/^\S+ ?/, "");
 }
 
 /**

@@ -30,14 +30,15 @@ export function tabulateHeat(
   const padded = heat(T);
   const value = padded.slice(2, -2);
   /** dC/dln T times the grid's step. */
-  const rise = value.map((_, i) => (padded[i]! - 8 * padded[i + 1]! + 8 * padded[i + 3]! - padded[i + 4]!) / 12);
+  const rise = value.map(
+    (_, i) => (padded[i]! - 8 * padded[i + 1]! + 8 * padded[i + 3]! - padded[i + 4]!) / 12,
+  );
 
   function cellOf(x: number): number {
     const i = Math.floor((x - x0) / step);
     if (i >= 0 && i < points - 1) return i;
     throw new DomainError(
-      `the simulated cell went to ${Math.exp(x).toPrecision(4)} K, outside ${from_K.toPrecision(3)} K to ${to_K.toPrecision(3)} K; ` +
-        "lower the heat leak or the rise, or strengthen the link",
+      `the simulated cell went to ${Math.exp(x).toPrecision(4)} K, outside ${from_K.toPrecision(3)} K to ${to_K.toPrecision(3)} K`,
     );
   }
   function inCell(i: number, s: number): number {

@@ -1,5 +1,9 @@
 import { BOLTZMANN, GAS_CONSTANT, HELIUM4_ATOMIC_MASS, PLANCK } from "../physics/constants.js";
-import { adjustedCurve, heatCapacityOfCurve_J_per_mol_K, PUBLISHED_CURVE } from "../physics/excitation-curve.js";
+import {
+  adjustedCurve,
+  heatCapacityOfCurve_J_per_mol_K,
+  PUBLISHED_CURVE,
+} from "../physics/excitation-curve.js";
 import { phononHeatCapacity_J_per_mol_K } from "../physics/phonon.js";
 import { rotonHeatCapacity_J_per_mol_K } from "../physics/roton.js";
 import type { Filling, PowerLaw } from "./scenario.js";
@@ -55,6 +59,6 @@ export function fillingHeat_J_per_K(filling: Filling, T_K: Float64Array): Float6
     const T = T_K[i]!;
     const vapour = vapour_mol(T, vapourSpace_m3);
     const lambda = LATENT_HEAT_AT_ZERO_J_PER_MOL / (GAS_CONSTANT.value * T) + 2.5;
-    return (amount_mol - vapour) * c + vapour * GAS_CONSTANT.value * (2.5 - 2 * lambda + lambda * lambda);
+    return amount_mol * c + vapour * GAS_CONSTANT.value * (2.5 - 2 * lambda + lambda * lambda);
   });
 }

@@ -78,7 +78,7 @@ export function rodas4(system: StiffSystem, tolerance: number): Integrator {
       let left_s = span_s;
       while (left_s > 0) {
         // Splitting what is left in two avoids a last step of nearly nothing.
-        const h = step_s >= left_s ? left_s : step_s > left_s / 2 ? left_s / 2 : step_s;
+        const h = step_s >= left_s ? left_s : Math.min(step_s, left_s / 2);
         const error = attempt(y, h);
         count++;
         // NaN from a trial far off the mark is a refusal too. The embedded estimate goes with h⁴.
@@ -89,7 +89,7 @@ export function rodas4(system: StiffSystem, tolerance: number): Integrator {
           y.set(trial);
           left_s = h === left_s ? 0 : left_s - h;
           // A step cut short by the end of the span says nothing against the longer one before it.
-          step_s = h < step_s ? Math.max(next, Math.min(step_s, 5 * h)) : next;
+          step_s = h < step_s ? Math.max(next, step_s) : next;
         } else {
           step_s = next;
         }

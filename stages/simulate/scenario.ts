@@ -2,6 +2,8 @@
  * What the simulator is told, in SI units and true values. config.ts reads it from YAML; tests write it directly.
  */
 
+import type { MaterialName } from "../physics/materials.js";
+
 /** coefficient·T^power, T in K. */
 export interface PowerLaw {
   readonly coefficient: number;
@@ -30,9 +32,16 @@ export interface Filling {
   readonly helium: HeliumModel;
 }
 
+/** A piece of the empty cell whose specific heat is published (physics/materials.ts). */
+export interface Part {
+  readonly material: MaterialName;
+  readonly mass_kg: number;
+}
+
 export interface Cell {
-  /** Heat capacity of the empty body, J/K. */
+  /** Heat capacity of the empty body, J/K; together with that of `parts`. */
   readonly addenda: readonly PowerLaw[];
+  readonly parts: readonly Part[];
   /** g in G = g·T³ between body and liquid. */
   readonly boundary_W_per_K4: number;
   /** K = coefficient·T^power between body and stage, W/K. */
@@ -103,13 +112,18 @@ export interface HeaterReading {
   readonly relativeNoise: number;
   readonly currentOffset_A: number;
   readonly voltageOffset_V: number;
-  /** Voltage as read over true voltage. */
-  readonly gain: number;
-  /** Heater clock minus thermometer clock. */
+  /** Current and voltage as read over their true values. */
+  readonly currentGain: number;
+  readonly voltageGain: number;
+  /** Digitising steps; 0 for none. */
+  readonly currentResolution_A: number;
+  readonly voltageResolution_V: number;
+  /** Time to add to the heater's clock to have the thermometer's. */
   readonly clockOffset_s: number;
 }
 
-export interface NightPlan {
+/** One night, complete. */
+export interface Scenario {
   readonly cell: Cell;
   /** null: an empty cell. */
   readonly filling: Filling | null;
@@ -122,6 +136,7 @@ export interface NightPlan {
     readonly gaps: readonly Span[];
   };
   readonly heater: HeaterReading;
-  readonly stageReading: { readonly interval_s: number; readonly noise_K: number } | null;
+  /** The stage is read with every n-th thermometer reading, n = `every`; null where nobody logs it. */
+  readonly stageReading: { readonly every: number; readonly noise_K: number } | null;
   readonly disturbances: readonly Disturbance[];
 }

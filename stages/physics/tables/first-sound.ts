@@ -1,10 +1,11 @@
 /**
- * Recommended first sound of ⁴He along saturated vapour pressure, rows of [T₉₀/K, u₁/(m/s)], below the lambda point.
- * R. J. Donnelly and C. F. Barenghi, J. Phys. Chem. Ref. Data 27, 1217 (1998), chapter 3: their spline, evaluated.
- * Within 0.07 % of the measured rows of their Table 3.1.
+ * Recommended first sound of ⁴He along saturated vapour pressure, rows of [T₉₀/K, u₁/(m/s)].
+ * R. J. Donnelly and C. F. Barenghi, J. Phys. Chem. Ref. Data 27, 1217 (1998), chapter 3: their spline, evaluated;
+ * within 0.07 % of the measured rows of their Table 3.1. At the lambda point, where their coefficients run from
+ * 217.4 to 217.8 m/s, each branch ends or begins with 217.5.
  */
 // biome-ignore format: a table reads as a table
-export const FIRST_SOUND: readonly (readonly [number, number])[] = [
+export const FIRST_SOUND_BELOW_LAMBDA: readonly (readonly [number, number])[] = [
   [0, 238.21],
   [0.1, 238.209],
   [0.2, 238.211],
@@ -45,4 +46,55 @@ export const FIRST_SOUND: readonly (readonly [number, number])[] = [
   [2.12, 221.305],
   [2.14, 220.256],
   [2.15, 219.698],
+  [2.16, 219.11],
+  [2.17, 218.369],
+  [2.175, 217.838],
+  [2.1768, 217.5],
+];
+
+// biome-ignore format: a table reads as a table
+export const FIRST_SOUND_ABOVE_LAMBDA: readonly (readonly [number, number])[] = [
+  [2.1768, 217.5],
+  [2.18, 218.595],
+  [2.2, 219.358],
+  [2.25, 220.35],
+  [2.3, 221.041],
+  [2.35, 221.504],
+  [2.4, 221.776],
+  [2.45, 221.895],
+  [2.5, 221.897],
+  [2.55, 221.817],
+  [2.6, 221.662],
+  [2.65, 221.435],
+  [2.7, 221.134],
+  [2.75, 220.762],
+  [2.8, 220.319],
+  [2.85, 219.805],
+  [2.9, 219.221],
+  [2.95, 218.567],
+  [3, 217.845],
+  [3.05, 217.055],
+  [3.1, 216.198],
+  [3.15, 215.274],
+  [3.2, 214.284],
+  [3.25, 213.229],
+  [3.3, 212.109],
+  [3.35, 210.924],
+  [3.4, 209.677],
+  [3.45, 208.367],
+  [3.5, 206.995],
+  [3.55, 205.561],
+  [3.6, 204.067],
+  [3.65, 202.512],
+  [3.7, 200.898],
+  [3.75, 199.226],
+  [3.8, 197.495],
+  [3.85, 195.707],
+  [3.9, 193.862],
+  [3.95, 191.961],
+  [4, 190.005],
+  [4.05, 187.993],
+  [4.1, 185.928],
+  [4.15, 183.809],
+  [4.2, 181.637],
 ];

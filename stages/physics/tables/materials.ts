@@ -55,7 +55,8 @@ const KEESOM = "P. H. Keesom and G. Seidel, Phys. Rev. 113, 33 (1959)";
 const BARUCCI = "M. Barucci et al., Cryogenics 46, 767 (2006)";
 const NIST = "NIST Cryogenic Material Properties compilation";
 const NONE_STATED = "none stated; our judgement";
-const T3_LIMIT = "stated errors of γ and θ, widened; range cut at θ/70, where the T³ law still holds (common practice)";
+const T3_LIMIT =
+  "stated errors of γ and θ, widened; range cut at θ/70, where the T³ law still holds (common practice)";
 
 export const MATERIALS = {
   copper: {

@@ -1,0 +1,26 @@
+import { Defect } from "../errors.js";
+import { type CalibrationTable, calibrationTable } from "./calibration-table.js";
+import { chebyshev } from "./chebyshev.js";
+import type { ThermometerConfig } from "./config.js";
+import { logPolynomial } from "./log-polynomial.js";
+import type { Calibration } from "./types.js";
+
+/**
+ * A thermometer's calibration, whichever form it is configured in.
+ * @param table the points, for the form "table"; else null
+ * @throws InputError if the calibration is no monotonic curve of positive temperatures
+ */
+export function calibrationOf(
+  { calibration, scale }: Pick<ThermometerConfig, "calibration" | "scale">,
+  table: CalibrationTable | null,
+): Calibration {
+  switch (calibration.form) {
+    case "table":
+      if (table === null) throw new Defect("a table calibration without its table");
+      return calibrationTable(table, scale, calibration.standard_uncertainty.value);
+    case "log-polynomial":
+      return logPolynomial(calibration, scale);
+    case "chebyshev":
+      return chebyshev(calibration, scale);
+  }
+}
