@@ -142,6 +142,9 @@ function corner(samples: Samples, coarse: number, duration: number, interval_s: 
   if (first + 1 >= time_s.length) return null;
   const from = time_s[first - 1]!;
   const to = time_s[first]!;
+  const jump_K = temperature_K[first]! - base_K(to) - (temperature_K[first - 1]! - base_K(from));
+  const jumped = jump_K > 2 * ramp.slope(to) * (to - from) + 4 * noise;
+  if (!jumped) return t;
   return t < from ? (from + to) / 2 : Math.min(t, to);
 }
 

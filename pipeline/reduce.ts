@@ -1,0 +1,83 @@
+import { InputError } from "../stages/errors.js";
+import { pointsCsv } from "../stages/publish/dataset.js";
+import type { CommonOptions, ExitCode } from "./cli/common.js";
+import { loadCampaign } from "./config/campaign.js";
+import { defaultReduction } from "./config/campaign-schema.js";
+import { type Cell, loadCell, loadRun, loadSample, type Run, requireFit } from "./config/load.js";
+import { type Night, reduceNight } from "./night.js";
+import { consoleTeller } from "./progress.js";
+import { readCalibration, readNight } from "./read-night.js";
+import { writeWhole } from "./store/write.js";
+
+interface Job {
+  readonly run: Run;
+  readonly cell: Cell;
+  readonly pulses: ReturnType<typeof defaultReduction>["pulses"];
+}
+
+/** One night to heat capacity points. @throws InputError */
+export async function reduceRun({ run, cell, pulses }: Job): Promise<Night> {
+  const calibration = await readCalibration(cell.thermometer);
+  return reduceNight(await readNight(run), calibration, run, cell, pulses);
+}
+
+type Options = CommonOptions & Readonly<Record<string, unknown>>;
+
+function jobOf(options: Options): Job {
+  const text = (key: string): string | undefined => options[key] as string | undefined;
+  const campaignFile = text("campaign");
+  if (campaignFile !== undefined) {
+    const campaign = loadCampaign(campaignFile);
+    const wanted = text("run-id") ?? text("run");
+    const empty = campaign.addenda.kind === "runs" ? campaign.addenda.runs : [];
+    const all = [...campaign.runs, ...empty];
+    const run = all.find((each) => each.run === wanted);
+    if (run === undefined) {
+      throw new InputError({
+        key: "--run",
+        ...(wanted === undefined ? {} : { value: wanted }),
+        expected: `a night of ${campaign.campaign}: ${all.map((each) => each.run).join(", ")}`,
+        wayOut: `rotonwell reduce --campaign ${campaignFile} --run ${all[0]?.run ?? "NIGHT"}`,
+      });
+    }
+    return { run, cell: campaign.cell, pulses: campaign.reduction.pulses };
+  }
+  const [runFile, cellFile] = [text("run"), text("cell")];
+  if (runFile === undefined || cellFile === undefined) {
+    throw new InputError({
+      key: runFile === undefined ? "run" : "--cell",
+      expected: "a run file with its cell, or a campaign and the night's name",
+      wayOut:
+        "rotonwell reduce RUN.yaml --cell CELL.yaml --sample SAMPLE.yaml, or reduce --campaign CAMPAIGN.yaml --run NIGHT",
+    });
+  }
+  const cell = loadCell(cellFile);
+  const sampleFile = text("sample");
+  if (sampleFile !== undefined) requireFit(cell, loadSample(sampleFile));
+  return { run: loadRun(runFile), cell, pulses: defaultReduction().pulses };
+}
+
+export async function reduceCommandLine(options: Options): Promise<ExitCode> {
+  const teller = consoleTeller(options);
+  const night = await reduceRun(jobOf(options));
+  const csv = pointsCsv(night.table);
+  const out = options["out"] as string | undefined;
+  if (out !== undefined) writeWhole(out, csv);
+  const used = night.table.used.reduce((sum, u) => sum + u, 0);
+  teller.step(`${night.run}: ${used} of ${night.table.used.length} pulses used`);
+  for (const note of night.notes) teller.step(`  ${note}`);
+  if (options.json) {
+    const columns = Object.fromEntries(
+      Object.entries(night.table).map(([name, column]) => [
+        name,
+        Array.from(column as ArrayLike<number | string>, (x) =>
+          typeof x === "number" && !Number.isFinite(x) ? null : x,
+        ),
+      ]),
+    );
+    teller.json({ run: night.run, clock: night.clock, notes: night.notes, points: columns });
+  } else if (out === undefined && !options.quiet) {
+    process.stdout.write(csv);
+  }
+  return 0;
+}
