@@ -60,9 +60,6 @@ if (!stampIs(built, sources)) {
   console.error("compiling …");
   rmSync(join(root, "dist"), { recursive: true, force: true });
   run(process.execPath, [join(root, "node_modules/typescript/bin/tsc"), "-p", "tsconfig.build.json"]);
-  const schemaWriter = join(root, "dist/pipeline/config/write-schemas.js");
-  if (existsSync(schemaWriter)) run(process.execPath, [schemaWriter, join(root, "dist/schemas")]);
-  mkdirSync(join(root, "dist"), { recursive: true });
+  run(process.execPath, [join(root, "dist/pipeline/config/write-schemas.js"), join(root, "dist/schemas")]);
   writeFileSync(join(root, built), sources);
-  if (!statSync(join(root, "dist")).isDirectory()) process.exit(1);
 }

@@ -84,7 +84,8 @@ async function checkRun(run: Run): Promise<Pick<CheckedFile, "lines" | "logs">> 
     pulses: summary.log === "heater" ? pulses : null,
   }));
   const lines = logs.map((log) => {
-    const gaps = log.gaps.length === 0 ? "no gaps" : `${log.gaps.length} gaps`;
+    const gaps =
+      log.gaps.length === 0 ? "no gaps" : `${log.gaps.length} gap${log.gaps.length === 1 ? "" : "s"}`;
     const events = log.pulses === null ? "" : `, ${log.pulses} pulses`;
     return `  ${run.run} ${log.log}: ${log.usable} of ${log.rows} rows usable, ${log.from_s.toFixed(1)} s to ${log.to_s.toFixed(1)} s, ${gaps}${events}`;
   });

@@ -13,7 +13,7 @@ export interface FillPressure {
 
 /**
  * Pressure of the trapped amount once cell and line are at room temperature: p = nRT/V·(1 + Bn/V), the virial series
- * to its second term. Above some hundred bar the true pressure is higher by a tenth or so: an estimate, for a caution.
+ * to its second term. The terms left out are positive here, so at hundreds of bar the true pressure is higher still.
  */
 export function fillPressure(cell: Cell, sample: Sample): FillPressure {
   const n = amountOf(sample).value;
@@ -21,14 +21,14 @@ export function fillPressure(cell: Cell, sample: Sample): FillPressure {
   const B = secondVirial_m3_per_mol(ROOM_K).value;
   const pressure_Pa = ((n * GAS_CONSTANT.value * ROOM_K) / V) * (1 + (B * n) / V);
   const relief = cell.config.relief_pressure?.value ?? null;
-  const bar = (pressure_Pa / 1e5).toPrecision(2);
+  const bar = Number((pressure_Pa / 1e5).toPrecision(2));
   const compared =
     relief === null
       ? "no relief_pressure is stated for this cell"
-      : `the stated relief pressure is ${(relief / 1e5).toPrecision(2)} bar${pressure_Pa > relief ? ": the fill must leave through the relief on warming" : ""}`;
+      : `the stated relief pressure is ${Number((relief / 1e5).toPrecision(3))} bar${pressure_Pa > relief ? ": the fill must leave through the relief on warming" : ""}`;
   return {
     pressure_Pa,
     relief_Pa: relief,
-    words: `sealed and warmed to ${ROOM_K} K, this fill would reach about ${bar} bar (real gas, second virial term); ${compared}`,
+    words: `sealed and warmed to ${ROOM_K} K, this fill would reach about ${bar} bar or more (real gas to the second virial term); ${compared}`,
   };
 }

@@ -1,3 +1,4 @@
+import { InputError } from "../stages/errors.js";
 import { sampleFlagWords } from "../stages/ingest/flag-words.js";
 import type { RawNight } from "../stages/ingest/types.js";
 import { analysePulses } from "../stages/pulses/analyse.js";
@@ -34,6 +35,7 @@ export interface Night {
   readonly notes: readonly string[];
 }
 
+/** @throws InputError for a forced method that is not there */
 export function reduceNight(
   raw: RawNight,
   calibration: Calibration,
@@ -41,6 +43,7 @@ export function reduceNight(
   cell: Cell,
   config: PulsesConfig,
 ): Night {
+  requireMethod(config);
   const trace = toTemperature(raw.thermometer, calibration);
   const { heater } = cell.config;
   const read = heaterPulses(raw.heater, {
@@ -118,4 +121,15 @@ function heatSources(pulses: HeaterPulses, heater: HeaterConfig): EffectOfHeat[]
       relative: column((i) => heater.voltage_gain.value * (1 - leads(i))),
     },
   ];
+}
+
+/** One method serves every pulse so far; another is refused by name, never replaced in silence. */
+function requireMethod({ method }: PulsesConfig): void {
+  if (method === "auto" || method === "drift") return;
+  throw new InputError({
+    key: "reduction.pulses.method",
+    value: method,
+    expected: "auto or drift: the others are not in this version",
+    wayOut: "write method: auto; stages/pulses/README.md says for which cells drift lines are not enough",
+  });
 }

@@ -1,6 +1,5 @@
 import { z } from "zod";
 import { addendaSchema } from "../../stages/addenda/config.js";
-import { budgetSchema } from "../../stages/budget/config.js";
 import { combineSchema } from "../../stages/combine/config.js";
 import { publicationSchema } from "../../stages/publish/config.js";
 import { pulsesSchema } from "../../stages/pulses/config.js";
@@ -12,7 +11,6 @@ export const reductionSchema = z
     pulses: pulsesSchema,
     combine: combineSchema,
     separate: separateSchema,
-    budget: budgetSchema,
   })
   .prefault({})
   .meta({ description: "How the stages work; every key has a default." });

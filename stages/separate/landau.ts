@@ -16,7 +16,7 @@ export const GAP_BRACKET_K: readonly [number, number] = [3, 20];
 /** χ² bends on a scale of kelvins: 0.25 K cannot step over its minimum. */
 export const SCAN_STEPS = 68;
 
-const ROTON_AMPLITUDE_UNIT = "J/(mol.K0.5)";
+const ROTON_AMPLITUDE_UNIT = "J/(mol.K1.5)";
 
 /** The unit of an amplitude of T^power: J/(mol.K4) for T³. */
 export function powerUnit(power: number): string {

@@ -99,7 +99,7 @@ test("every default of a cell, a run and a reduction", () => {
   const run = loadRun(path("nights/n/run.yaml"));
   expect(run.logs.stage).toBeNull();
   expect(run.config).toMatchObject({ exclude: [], veto: [], clock: { heater_offset: "auto" } });
-  const { separate, pulses, combine, budget } = defaultReduction();
+  const { separate, pulses, combine } = defaultReduction();
   expect(separate.window.map(({ value }) => value)).toEqual([0.35, 1.15]);
   expect(separate).toMatchObject({ phonon_powers: "auto", other_powers: [], model: "auto" });
   expect(pulses).toMatchObject({
@@ -111,7 +111,6 @@ test("every default of a cell, a run and a reduction", () => {
   });
   expect(pulses.exclude_flags).not.toContain("truncated");
   expect(combine.bins_per_decade).toBe(20);
-  expect(budget).toEqual({ draws: 10_000, seed: 1 });
 });
 
 test("gas in place of an amount, and the other forms of calibration", () => {
@@ -174,7 +173,7 @@ test("the effective configuration is plain JSON, complete, and names no folder o
       {},
     ],
     addenda: { kind: "parts", parts: [{ material: "copper", mass: "24.1 ± 0.1 g" }] },
-    reduction: { separate: { window: ["0.35 K", "1.15 K"] }, budget: { seed: 1 } },
+    reduction: { separate: { window: ["0.35 K", "1.15 K"] } },
   });
   expect(json).not.toContain('"factor"');
   expect(effectiveRun(campaign, campaign.runs[0]!)).toMatchObject({
