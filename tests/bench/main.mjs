@@ -4,6 +4,7 @@
 //   title                 what is measured
 //   repeats               how often each case runs
 //   prepare(folder)       writes its input into a fresh folder, returns what the cases need (plain data)
+//   report()              instead of cases: a text of its own, for what is counted rather than timed
 //   cases                 { name: async (input) => ({ rows?, bytes? }) }; the first is what the others are compared with
 // Each run is a process of its own, so that one case's memory and warm code do not help or burden the next.
 // A bench measures and never judges: there is no time that fails.
@@ -56,6 +57,10 @@ console.log(`Node ${process.version}, ${cpus().length} × ${cpus()[0]?.model ?? 
 for (const name of asked.length > 0 ? asked : known) {
   const path = pathToFileURL(join(here, `${name}.bench.mjs`)).href;
   const bench = await import(path);
+  if (bench.report !== undefined) {
+    console.log(`\n${name}: ${bench.title}\n${await bench.report()}`);
+    continue;
+  }
   const folder = mkdtempSync(join(tmpdir(), "rotonwell-bench-"));
   try {
     const input = await bench.prepare(folder);
