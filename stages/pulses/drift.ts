@@ -22,6 +22,8 @@ export interface DriftFit {
 // Tukey's bisquare: 95 % efficient on normal noise, blind to what lies beyond 4.685 standard deviations
 // (Beaton and Tukey, Technometrics 16, 147 (1974)).
 const BISQUARE = 4.685;
+/** One sample in two million lies further out by chance. */
+const OUTSTANDING = 5;
 
 /** Samples enough to give the drift one more degree without asking. */
 const SAMPLES_PER_DEGREE = 20;
@@ -47,10 +49,14 @@ function robustFit(samples: Samples, degree: number): RobustFit {
       residual[i] = T[i]! - fit.value(t[i]!);
       magnitude[i] = Math.abs(residual[i]!);
     }
+    let largest = 0;
+    for (let i = 0; i < n; i++) largest = Math.max(largest, magnitude[i]!);
     const next = 1.4826 * medianOf(magnitude) * Math.sqrt(n / Math.max(1, n - degree - 1));
+    // Nothing stands out of normal noise: plain least squares is the best there is, and one fit is enough.
+    const clean = round === 0 && largest < OUTSTANDING * next;
     const settled = round > 0 && Math.abs(next - noise) <= 1e-3 * next;
     noise = next;
-    if (noise === 0 || settled) break;
+    if (noise === 0 || settled || clean) break;
     for (let i = 0; i < n; i++) {
       const z = residual[i]! / (BISQUARE * noise);
       weight[i] = Math.abs(z) < 1 ? (1 - z * z) ** 2 : 0;

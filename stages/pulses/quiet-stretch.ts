@@ -47,6 +47,7 @@ export function quietStretch(samples: Samples, side: "start" | "end", least_s: n
     const end = longestPlain(near, skip, allowed);
     found.push({ skip, end });
     longest = Math.max(longest, end - skip);
+    if (end - skip >= Math.max(FEWEST_BLOCKS, n / 8)) break;
   }
   const chosen = found.find(
     ({ skip, end }) => end - skip >= Math.max(FEWEST_BLOCKS, Math.min(longest / 4, n / 8)),
