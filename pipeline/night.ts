@@ -1,3 +1,4 @@
+import { basename } from "node:path";
 import { InputError } from "../stages/errors.js";
 import { sampleFlagWords } from "../stages/ingest/flag-words.js";
 import type { RawNight } from "../stages/ingest/types.js";
@@ -64,7 +65,7 @@ export function reduceNight(
     notes: [
       ...raw.notes.map(
         ({ file, line, count, text }) =>
-          `${file}${line === undefined ? "" : `:${line}`}: ${text}${count > 1 ? ` (${count} times)` : ""}`,
+          `${basename(file)}${line === undefined ? "" : `:${line}`}: ${text}${count > 1 ? ` (${count} times)` : ""}`,
       ),
       ...flaggedSamples(trace.flag),
       ...scaleNotes(calibration),

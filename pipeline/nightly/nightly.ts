@@ -1,4 +1,4 @@
-import { join } from "node:path";
+import { dirname, join, relative, sep } from "node:path";
 import { stringify } from "yaml";
 import { CAUTIONS } from "../../stages/publish/cautions.js";
 import { binnedCsv, datasetCsv, pointsCsv } from "../../stages/publish/dataset.js";
@@ -12,6 +12,7 @@ import { analyseCampaign, type CampaignResult } from "../chain.js";
 import { type Campaign, loadCampaign } from "../config/campaign.js";
 import { effectiveConfig, effectiveRun } from "../config/effective.js";
 import type { Run } from "../config/load.js";
+import type { Located } from "../config/located.js";
 import { type Night, reduceNight } from "../night.js";
 import { silentTeller, type Teller } from "../progress.js";
 import { logFiles, readCalibration, readNight } from "../read-night.js";
@@ -59,14 +60,20 @@ async function locked(campaign: Campaign, teller: Teller): Promise<NightlyResult
   const output = campaign.output.path;
   const version = programVersion();
   const calibration = await readCalibration(campaign.thermometer);
+  // Results name files as seen from the campaign's own folder, so that they do not depend on where it was run from.
+  const nameOf = ({ path }: Located): string =>
+    relative(dirname(campaign.file.path), path).split(sep).join("/");
+  const digestOf = async (file: Located): Promise<InputDigest> => ({
+    file: nameOf(file),
+    sha256: await fileDigest(file.path),
+  });
   const { table } = campaign.thermometer;
-  const calibrationDigest =
-    table === null ? [] : [{ file: table.shown, sha256: await fileDigest(table.path) }];
+  const calibrationDigest = table === null ? [] : [await digestOf(table)];
   const digests: InputDigest[] = [...calibrationDigest];
 
   const reduceOne = async (run: Run, kind: ReducedNight["kind"]): Promise<ReducedNight> => {
     const logs: InputDigest[] = [];
-    for (const file of logFiles(run)) logs.push({ file: file.shown, sha256: await fileDigest(file.path) });
+    for (const file of logFiles(run)) logs.push(await digestOf(file));
     digests.push(...logs);
     const key = valueDigest([version, effectiveRun(campaign, run), calibrationDigest, logs]);
     const folder = join(output, "runs", run.run);
