@@ -69,6 +69,7 @@ export function analyseCampaign(
     for (const note of molar.notes) notes.add(note);
     return nightPoints(night, total, molar, amount, addenda);
   });
+  for (const note of volumeNotes(campaign, amount, molarVolume)) notes.add(note);
   const count = points.reduce((sum, night) => sum + night.T_K.length, 0);
   if (count === 0) {
     throw new InputError({
@@ -107,10 +108,28 @@ export function analyseCampaign(
     binned: binnedCurve(dataset, campaign.reduction.combine.bins_per_decade),
     separation,
     budget: budget(separation),
-    between: betweenNights(separation, dataset.run),
+    // Before widening: a ratio of nights that scatter must not be made small by their own scatter.
+    between: betweenNights(first, dataset.run),
     scatterRatio,
     notes: [...notes],
   };
+}
+
+/** A full cell holds its volume over the molar volume; more is said where it holds something else. */
+function volumeNotes(campaign: Campaign, amount: Quantity, molarVolume: Quantity): string[] {
+  if (campaign.sample.config.condition !== "constant-volume") return [];
+  const { volume } = campaign.cell.config;
+  const found = volume.value / amount.value;
+  const relative = (quantity: Quantity): number => quantity.u / quantity.value;
+  // Volumes given without ± are taken for good to a part in five hundred.
+  const u =
+    molarVolume.value * Math.max(2e-3, Math.hypot(relative(volume), relative(amount), relative(molarVolume)));
+  const pull = (found - molarVolume.value) / u;
+  if (Math.abs(pull) <= 2) return [];
+  const cm3 = (value: number): string => `${(value * 1e6).toPrecision(5)} cm3/mol`;
+  return [
+    `cell volume over amount is ${cm3(found)}, the molar volume ${cm3(molarVolume.value)}: ${Math.abs(pull).toFixed(1)} standard uncertainties apart; the cell is not full, or one of the three is wrong`,
+  ];
 }
 
 interface UsedPoints {
@@ -155,11 +174,13 @@ function nightPoints(
   addenda: Addenda,
 ): NightPoints {
   const n = total.T_K.length;
-  // An empty cell measured with the same heater is off by the same factor, so the sample's share is; a parts list
-  // is not, so the whole error of the heat falls on the sample.
-  const leverage = total.row.map((_, i) =>
-    addenda.source === "empty-cell" ? 1 : 1 / (1 - molar.addenda_share[i]!),
-  );
+  // An error of the heat falls on all that the pulses measured. Addenda measured with the same heater are off by the
+  // same factor and take their part of it; a parts list and the vapour's part are calculated, and take none.
+  const measuredAddenda = addenda.source === "empty-cell";
+  const leverage = total.row.map((_, i) => {
+    const share = molar.addenda_share[i]!;
+    return (measuredAddenda ? 1 - share : 1) / (1 - share - molar.vapour_share[i]!);
+  });
   const heat = (effect: EffectOfHeat) => ({
     name: effect.name,
     title: effect.title,
@@ -173,6 +194,9 @@ function nightPoints(
     u_repeat_J_per_mol_K: molar.u_repeat_J_per_mol_K,
     dT_K: total.dT_K,
     addenda_share: molar.addenda_share,
+    calculated_slope_J_per_mol_K2: molar.T_K.map((T) =>
+      measuredAddenda ? 0 : slopeOf((t) => addenda.heatCapacity_J_per_K(t), T) / amount.value,
+    ),
     relativeSources: [
       ...night.heatSources.map(heat),
       {
@@ -183,4 +207,10 @@ function nightPoints(
     ],
     absoluteSources: molar.sources.filter(({ name }) => name !== "amount"),
   };
+}
+
+/** Central difference over a thousandth of T: addenda are smooth sums of powers, so it errs by 1e-6 or so. */
+function slopeOf(heatCapacity: (T_K: number) => number, T: number): number {
+  const h = 5e-4 * T;
+  return (heatCapacity(T + h) - heatCapacity(T - h)) / (2 * h);
 }

@@ -47,10 +47,12 @@ export function reduceNight(
   requireMethod(config);
   const trace = toTemperature(raw.thermometer, calibration);
   const { heater } = cell.config;
-  const read = heaterPulses(raw.heater, {
-    lead_resistance_Ohm: heater.lead_resistance.value,
-    lead_share: heater.lead_share.value,
-  });
+  const { heater: log } = run.config.logs;
+  const read = heaterPulses(
+    raw.heater,
+    { lead_resistance_Ohm: heater.lead_resistance.value, lead_share: heater.lead_share.value },
+    log.kind === "sampled" ? (log.pulse_length ?? null) : null,
+  );
   const clock = clockOf(run, () => clockOffset(trace, read));
   const pulses = onThermometerClock(read, clock.offset_s);
   const verdicts = run.config.veto.map(({ pulse, reason, keep }) => ({ pulse, reason, keep: keep === true }));
@@ -61,7 +63,7 @@ export function reduceNight(
     pictures,
     clock,
     u_temperature_K: calibration.u_temperature_K,
-    heatSources: heatSources(pulses, heater),
+    heatSources: heatSources(run.run, pulses, heater),
     notes: [
       ...raw.notes.map(
         ({ file, line, count, text }) =>
@@ -95,21 +97,24 @@ function flaggedSamples(flag: Uint8Array): string[] {
 }
 
 /** Each ± of the heater, as a relative change of the heat of each pulse. */
-function heatSources(pulses: HeaterPulses, heater: HeaterConfig): EffectOfHeat[] {
-  const leads = (i: number): number => pulses.lead_heat_J[i]! / pulses.Q_J[i]!;
+function heatSources(run: string, pulses: HeaterPulses, heater: HeaterConfig): EffectOfHeat[] {
   const column = (of: (i: number) => number): Float64Array =>
     Float64Array.from(pulses.pulse, (_, i) => of(i));
-  const relative = ({ value, u }: { value: number; u: number }): number => (value === 0 ? 0 : u / value);
+  const leads = (i: number): number => pulses.lead_heat_J[i]! / pulses.Q_J[i]!;
+  // What a whole ohm of leads would add, all of it inward.
+  const perOhm = (i: number): number => pulses.currentSquared_A2s[i]! / pulses.Q_J[i]!;
+  const { lead_share: share, lead_resistance: resistance } = heater;
   return [
     {
       name: "lead_share",
       title: "share of lead heat",
-      relative: column((i) => leads(i) * relative(heater.lead_share)),
+      relative: column((i) => perOhm(i) * resistance.value * share.u),
     },
     {
       name: "lead_resistance",
       title: "lead resistance",
-      relative: column((i) => leads(i) * relative(heater.lead_resistance)),
+      // A share of 0 ± u does not make the resistance certain: what flows in may be u of it.
+      relative: column((i) => perOhm(i) * resistance.u * Math.hypot(share.value, share.u)),
     },
     {
       name: "heater_current",
@@ -120,6 +125,12 @@ function heatSources(pulses: HeaterPulses, heater: HeaterConfig): EffectOfHeat[]
       name: "heater_voltage",
       title: "heater voltage scale",
       relative: column((i) => heater.voltage_gain.value * (1 - leads(i))),
+    },
+    {
+      // Each night's own: another night is sampled in another step.
+      name: `pulse_length_${run.toLowerCase().replace(/[^a-z0-9]+/g, "_")}`,
+      title: `pulse length, night ${run}`,
+      relative: pulses.u_length_relative,
     },
   ];
 }

@@ -224,15 +224,22 @@ export function nightlyRecord({ campaign, nights, result, report }: NightlyResul
     budget: report.budget,
     gates: report.gates,
     comparisons: report.comparisons,
+    scatter_ratio: result.scatterRatio,
+    notes: result.notes,
     output: campaign.output.path,
   };
 }
 
-export function nightlyText({ report, reportFile }: NightlyResult): string {
+export function nightlyText({ report, reportFile, result }: NightlyResult): string {
+  const notes = result.notes.map((note) => `Note: ${note}`);
   const failed = report.gates
     .filter(({ passed }) => !passed)
     .map(({ name, words }) => `GATE FAILED: ${name}: ${words}`);
-  return [...failed, nightsText(report), separationText(report.separation), `report  ${reportFile}`].join(
-    "\n",
-  );
+  return [
+    ...failed,
+    ...notes,
+    nightsText(report),
+    separationText(report.separation),
+    `report  ${reportFile}`,
+  ].join("\n");
 }

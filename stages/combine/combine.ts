@@ -18,6 +18,11 @@ export interface NightPoints {
   readonly u_repeat_J_per_mol_K: Float64Array;
   readonly dT_K: Float64Array;
   readonly addenda_share: Float64Array;
+  /**
+   * d/dT, per mole, of what was subtracted by calculation: it was taken at the temperature read, so an error of the
+   * scale moves it too. 0 where the addenda were measured on the same thermometer.
+   */
+  readonly calculated_slope_J_per_mol_K2: Float64Array;
   /** Sources that scale with C, and sources given as they are. Same names in every night, or none. */
   readonly relativeSources: readonly RelativeSource[];
   readonly absoluteSources: readonly CommonSource[];
@@ -47,6 +52,7 @@ export function combineNights(nights: readonly NightPoints[], options: CombineOp
   const { C, curve } = correctFiniteStep(T_K, measured, u_repeat, dT_K);
   const smooth = curve.C.map((value, i) => (Number.isFinite(value) ? value : C[i]!));
 
+  const calculatedSlope = gather((night) => night.calculated_slope_J_per_mol_K2);
   const sources: CommonSource[] = [];
   const names = (pick: (night: NightPoints) => readonly { name: string; title: string }[]) =>
     new Map(nights.flatMap((night) => pick(night).map(({ name, title }) => [name, title] as const)));
@@ -55,8 +61,8 @@ export function combineNights(nights: readonly NightPoints[], options: CombineOp
       name: "temperature_scale",
       title: "thermometer scale",
       // A thermometer that reads high by u puts the point where C is larger: at its stated T, C comes out low.
-      s_Cv_J_per_mol_K: curve.slope.map((slope) =>
-        Number.isFinite(slope) ? -slope * options.u_temperature_K : 0,
+      s_Cv_J_per_mol_K: curve.slope.map((slope, i) =>
+        Number.isFinite(slope) ? -(slope + calculatedSlope[i]!) * options.u_temperature_K : 0,
       ),
     });
   }

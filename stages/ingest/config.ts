@@ -1,7 +1,7 @@
 import { z } from "zod";
 import { InputError } from "../errors.js";
 import { parseQuantity } from "../quantities/quantity.js";
-import { columnName, columnOf, name, quantityOr, reading, text } from "../quantities/schema.js";
+import { columnName, columnOf, name, quantity, quantityOr, reading, text } from "../quantities/schema.js";
 
 export type { ValueColumn } from "../quantities/schema.js";
 
@@ -124,6 +124,12 @@ const heaterSampled = z.strictObject({
   time: timeColumn,
   current: columnOf("current", "Column with the heater's current."),
   voltage: columnOf("voltage", "Column with the voltage across the heater."),
+  pulse_length: quantity("time", {
+    description:
+      "Programmed length of every pulse. Without it the log's samples tell it, to one sampling interval if they are in step with the pulses.",
+    sign: "positive",
+    example: "4.000 ± 0.001 s",
+  }).optional(),
   format: partialFormat.optional(),
 });
 

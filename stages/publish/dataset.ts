@@ -27,7 +27,7 @@ export function datasetColumns(dataset: HeatCapacity): DatasetColumn[] {
     number("T_K", "K", "temperature, middle of the step"),
     number("Cv_J_per_mol_K", MOLAR, "molar heat capacity at constant volume, corrected for the finite step"),
     number("u_Cv_J_per_mol_K", MOLAR, "its standard uncertainty (k = 1), everything: √(u_repeat² + Σ s²)"),
-    number("u_repeat_J_per_mol_K", MOLAR, "repeatability (k = 1), independent from point to point"),
+    number("u_repeat_J_per_mol_K", MOLAR, "repeatability (k = 1), taken as independent from point to point"),
     ...dataset.sources.map(({ name, title }) =>
       number(
         `s_${name}_J_per_mol_K`,

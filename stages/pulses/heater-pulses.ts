@@ -19,8 +19,12 @@ export interface HeaterPulses {
   /** Heat that reaches the cell: ∫VI dt and the inward part of the lead heat. */
   readonly Q_J: Float64Array;
   readonly lead_heat_J: Float64Array;
+  /** ∫I² dt, what a lead of 1 Ohm dissipates. */
+  readonly currentSquared_A2s: Float64Array;
   /** Repeatability, k = 1. */
   readonly u_Q_J: Float64Array;
+  /** Relative standard uncertainty of the pulse length, where it is common to all pulses of the night. */
+  readonly u_length_relative: Float64Array;
   readonly resistance_Ohm: Float64Array;
   /** Bits of PulseFlag that the heater log alone decides. */
   readonly flag: Int32Array;
@@ -35,12 +39,23 @@ interface Electrical {
   readonly resistance_Ohm: number;
   /** From reading noise and from where the pulse begins and ends between samples. */
   readonly u_energy_J: number;
+  readonly u_length_relative: number;
   readonly flag: number;
 }
 
+/** A pulse length that somebody knows better than the log. */
+export interface PulseLength {
+  readonly value: number;
+  readonly u: number;
+}
+
 /** @returns one row a pulse; a pulse of zero length or energy stays, flagged. */
-export function heaterPulses(log: HeaterLog, wiring: HeaterWiring): HeaterPulses {
-  const rows = log.kind === "events" ? fromEvents(log) : fromSamples(log);
+export function heaterPulses(
+  log: HeaterLog,
+  wiring: HeaterWiring,
+  programmed: PulseLength | null = null,
+): HeaterPulses {
+  const rows = log.kind === "events" ? fromEvents(log) : fromSamples(log, programmed);
   const readingNoise = relativeReadingNoise(rows);
   const lead = rows.map((row) => row.currentSquared_A2s * wiring.lead_resistance_Ohm * wiring.lead_share);
   return {
@@ -49,7 +64,9 @@ export function heaterPulses(log: HeaterLog, wiring: HeaterWiring): HeaterPulses
     duration_s: Float64Array.from(rows, (row) => row.duration_s),
     Q_J: Float64Array.from(rows, (row, i) => row.energy_J + lead[i]!),
     lead_heat_J: Float64Array.from(lead),
+    currentSquared_A2s: Float64Array.from(rows, (row) => row.currentSquared_A2s),
     u_Q_J: Float64Array.from(rows, (row) => Math.hypot(row.u_energy_J, readingNoise * row.energy_J)),
+    u_length_relative: Float64Array.from(rows, (row) => row.u_length_relative),
     resistance_Ohm: Float64Array.from(rows, (row) => row.resistance_Ohm),
     flag: Int32Array.from(rows, (row) => row.flag),
   };
@@ -88,6 +105,7 @@ function fromEvents(log: HeaterEvents): Electrical[] {
       currentSquared_A2s: current * current * duration_s,
       resistance_Ohm: voltage / current,
       u_energy_J: 0,
+      u_length_relative: 0,
       flag: doubt(energy_J, duration_s, current * voltage),
     };
   });
@@ -104,7 +122,7 @@ interface Span {
  * between two samples is not seen; each edge is put halfway. If the lengths so found agree to one sampling
  * interval they are repeats of one programmed length: its mean over the night is far better known than any one.
  */
-function fromSamples(log: HeaterSamples): Electrical[] {
+function fromSamples(log: HeaterSamples, programmed: PulseLength | null): Electrical[] {
   const usable = usableSamples(log);
   if (usable.time_s.length < 4) return [];
   const { time_s, current_A, voltage_V } = usable;
@@ -120,13 +138,16 @@ function fromSamples(log: HeaterSamples): Electrical[] {
   }
   const offsets = restingOffsets(current_A, voltage_V, rest);
   const raw = spans.map((span) => integrate(usable, span, offsets));
-  const shared = sharedDuration(
-    raw.map((row) => row.duration_s),
-    raw.map((row) => row.interval_s),
-  );
+  const shared: PulseLength | null =
+    programmed ??
+    sharedLength(
+      raw.map((row) => row.duration_s),
+      raw.map((row) => row.interval_s),
+    );
   return raw.map((row, i) => {
-    const duration_s = shared === null ? row.duration_s : shared.duration_s;
-    const u_duration_s = shared === null ? row.interval_s / Math.sqrt(6) : shared.u_s;
+    const duration_s = shared === null ? row.duration_s : shared.value;
+    // Two edges, each anywhere within one interval: a triangle of half-width one interval.
+    const u_own_s = shared === null ? row.interval_s / Math.sqrt(6) : 0;
     const energy_J = row.power_W * duration_s;
     const middle_s = row.start_s + row.duration_s / 2;
     const leftOn = spans[i]!.last === n - 1 ? PulseFlag.HeaterLeftOn : 0;
@@ -136,7 +157,8 @@ function fromSamples(log: HeaterSamples): Electrical[] {
       energy_J,
       currentSquared_A2s: row.current_A * row.current_A * duration_s,
       resistance_Ohm: row.resistance_Ohm,
-      u_energy_J: Math.abs(row.power_W) * u_duration_s,
+      u_energy_J: Math.abs(row.power_W) * u_own_s,
+      u_length_relative: shared === null ? 0 : shared.u / shared.value,
       flag: doubt(energy_J, duration_s, row.power_W) | leftOn,
     };
   });
@@ -257,18 +279,17 @@ function integrate(log: HeaterSamples, span: Span, offsets: Offsets): RawPulse {
 }
 
 /** One programmed length behind all pulses, if what was seen allows it. */
-function sharedDuration(
-  duration_s: readonly number[],
-  interval_s: readonly number[],
-): { duration_s: number; u_s: number } | null {
+function sharedLength(duration_s: readonly number[], interval_s: readonly number[]): PulseLength | null {
   const n = duration_s.length;
   if (n < 3) return null;
   const interval = Math.max(...interval_s);
   const spread = Math.max(...duration_s) - Math.min(...duration_s);
   // Two edges, each seen to within one interval, differ by less than one interval between repeats.
   if (spread > 1.01 * interval) return null;
-  const mean = duration_s.reduce((sum, value) => sum + value, 0) / n;
-  // A length that never varies by a sample is in step with the clock, or within 1/√12 of an interval of the mean.
-  const scatter = Math.sqrt(duration_s.reduce((sum, value) => sum + (value - mean) ** 2, 0) / (n - 1));
-  return { duration_s: mean, u_s: scatter > 0 ? scatter / Math.sqrt(n) : 0 };
+  const value = duration_s.reduce((sum, each) => sum + each, 0) / n;
+  const scatter = Math.sqrt(duration_s.reduce((sum, each) => sum + (each - value) ** 2, 0) / (n - 1));
+  // Lengths that vary by a sample average out. Lengths that never do are in step with the samples, and the edges
+  // stay anywhere within their intervals, all night the same.
+  const inStep = spread < 0.5 * interval;
+  return { value, u: inStep ? interval / Math.sqrt(6) : scatter / Math.sqrt(n) };
 }

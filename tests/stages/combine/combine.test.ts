@@ -88,6 +88,7 @@ function night(run: string, T_K: Float64Array, relative: number): NightPoints {
     u_repeat_J_per_mol_K: Cv.map((v) => 0.002 * v),
     dT_K: new Float64Array(T_K.length),
     addenda_share: new Float64Array(T_K.length).fill(0.2),
+    calculated_slope_J_per_mol_K2: new Float64Array(T_K.length),
     relativeSources: [
       { name: "amount", title: "amount", relative: new Float64Array(T_K.length).fill(relative) },
     ],
