@@ -252,7 +252,7 @@ export const BAD_CONFIGURATIONS: readonly BadConfiguration[] = [
     replace: "kind: events ",
     by: "kind: sampled ",
     message: [
-      'nights/fjord-7/2026-11-14-a/run.yaml:11: logs.heater.duration is "{ column: duration, unit: s }"; expected one of the keys kind, file, time, current, voltage, format.',
+      'nights/fjord-7/2026-11-14-a/run.yaml:11: logs.heater.duration is "{ column: duration, unit: s }"; expected one of the keys kind, file, time, current, voltage, pulse_length, format.',
       "  Way out: duration goes with kind: events",
     ],
   },
