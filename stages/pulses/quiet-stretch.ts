@@ -146,7 +146,8 @@ function judge(blocks: Blocks, from: number, end: number): { scatter: number; he
 /** Medians of neighbouring samples: spikes go, steps stay sharp to one block. */
 function inBlocks(samples: Samples): Blocks {
   const n = samples.time_s.length;
-  const size = Math.max(1, Math.ceil(n / BLOCKS));
+  // A median of three is not moved by one spike; short windows cannot afford it.
+  const size = Math.max(n >= 60 ? 3 : 1, Math.ceil(n / BLOCKS));
   const count = Math.floor(n / size);
   const time_s = new Float64Array(count);
   const temperature_K = new Float64Array(count);
