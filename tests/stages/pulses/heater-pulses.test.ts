@@ -87,3 +87,20 @@ test("a heater that is still on when the log ends is named", () => {
   const pulses = heaterPulses(log, WIRING);
   expect(flagNames(pulses.flag[pulses.flag.length - 1]!)).toContain("heater-left-on");
 });
+
+test("sampled: how well the common length is known, and that a programmed one is taken", () => {
+  const inStep = heaterPulses(
+    sampled(0.5, 50, (I, V) => [I, V]),
+    WIRING,
+  );
+  // Both edges lie anywhere within their 0.5 s, all night the same: 0.5/√6 of 4 s, and no pulse scatters by it.
+  expectRelative(inStep.u_length_relative, new Float64Array(10).fill(0.5 / Math.sqrt(6) / 4), 1e-12);
+  expectRelative(inStep.u_Q_J, new Float64Array(10), 0);
+  const programmed = heaterPulses(
+    sampled(0.7, 50.1, (I, V) => [I, V]),
+    WIRING,
+    { value: 4, u: 0.002 },
+  );
+  expectRelative(programmed.Q_J, new Float64Array(10).fill(4e-3), 1e-12);
+  expectRelative(programmed.u_length_relative, new Float64Array(10).fill(5e-4), 1e-12);
+});
