@@ -3,7 +3,7 @@ import type { Night } from "../night.js";
 import { writeWhole } from "../store/write.js";
 
 /** Bumped when a stored night's form changes, so that an old one is never misread. */
-const FORM = 1;
+const FORM = 2;
 
 const COLUMN = { f: Float64Array, i: Int32Array, b: Uint8Array } as const;
 

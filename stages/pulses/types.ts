@@ -61,15 +61,30 @@ export interface PulseTable {
   readonly spikes: Int32Array;
 }
 
-/** What a figure of one pulse needs: samples thinned to a few hundred, fits on their own time axis. */
-export interface PulsePicture {
-  readonly pulse: number;
+/** A fitted curve, thinned. Both columns have one length. */
+export interface FittedCurve {
   /** Seconds from the start of the pulse. */
   readonly time_s: Float64Array;
   readonly temperature_K: Float64Array;
-  readonly before: { readonly time_s: Float64Array; readonly temperature_K: Float64Array };
-  readonly after: { readonly time_s: Float64Array; readonly temperature_K: Float64Array };
-  /** Where the step is read, from the start of the pulse. */
-  readonly step_s: number;
+}
+
+/** What a figure of one pulse needs: samples thinned to a few hundred, fits on their own time axis. */
+export interface PulsePicture {
+  readonly pulse: number;
+  readonly method: PulseMethod;
+  /** Seconds from the start of the pulse. Length n. */
+  readonly time_s: Float64Array;
+  /** Length n. */
+  readonly temperature_K: Float64Array;
+  /** Sample less fit, length n; NaN where the sample lies under no fit. */
+  readonly residual_K: Float64Array;
+  /** Standard deviation of one sample about the fit; NaN without a fit. */
+  readonly noise_K: number;
+  /** Drift lines: one before, one after, each drawn on to the step. A forward model: one curve through all. */
+  readonly fits: readonly FittedCurve[];
+  /** Where samples were fitted, from the start of the pulse. */
+  readonly windows: readonly { readonly from_s: number; readonly to_s: number }[];
+  /** The step as read, from the start of the pulse; null where nothing was read. */
+  readonly step: { readonly time_s: number; readonly from_K: number; readonly to_K: number } | null;
   readonly duration_s: number;
 }

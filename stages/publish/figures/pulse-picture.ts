@@ -1,5 +1,5 @@
 import { quantileSorted } from "simple-statistics";
-import type { PulsePicture } from "../../pulses/types.js";
+import type { FittedCurve, PulsePicture } from "../../pulses/types.js";
 import { escapeText } from "../html.js";
 import { significant } from "../rounding.js";
 import { FONT, VERMILION } from "./look.js";
@@ -31,7 +31,7 @@ function dots(time_s: Float64Array, temperature_K: Float64Array, x: Place, y: Pl
 }
 
 /** A curve as relative steps; those that do not move are left out. */
-function curve(fit: PulsePicture["before"], x: Place, y: Place): string {
+function curve(fit: FittedCurve, x: Place, y: Place): string {
   let path = "";
   let [px, py] = [0, 0];
   for (let i = 0; i < fit.time_s.length; i++) {
@@ -51,7 +51,7 @@ function pair(dx: number, dy: number): string {
 /** Range of temperatures: both fits whole, and all samples but the outermost per cent, which stop at the frame. */
 function temperatureRange(picture: PulsePicture): [number, number] {
   const samples = picture.temperature_K.filter(Number.isFinite).sort();
-  const fits = [...picture.before.temperature_K, ...picture.after.temperature_K].filter(Number.isFinite);
+  const fits = picture.fits.flatMap(({ temperature_K }) => [...temperature_K]).filter(Number.isFinite);
   const ends =
     samples.length === 0 ? [] : [quantileSorted([...samples], 0.01), quantileSorted([...samples], 0.99)];
   const all = [...ends, ...fits];
@@ -74,18 +74,18 @@ export function pulsePictureSvg(picture: PulsePicture, label: string): string {
   const y = scale(low_K, high_K, FRAME.bottom - 4, FRAME.top + 4);
   const heaterFrom = x(0);
   const heaterWidth = Math.max(2, x(picture.duration_s) - heaterFrom);
-  const [before, after] = [picture.before.temperature_K.at(-1), picture.after.temperature_K[0]];
+  const { step: read } = picture;
   const step =
-    before === undefined || after === undefined
+    read === null
       ? ""
-      : `<path d="M${x(picture.step_s)} ${y(before)}V${y(after)}" stroke="currentColor" stroke-width="2.5" stroke-dasharray="6 4"/>`;
+      : `<path d="M${x(read.time_s)} ${y(read.from_K)}V${y(read.to_K)}" stroke="currentColor" stroke-width="2.5" stroke-dasharray="6 4"/>`;
   const frame = `M${FRAME.left} ${FRAME.top}V${FRAME.bottom}H${FRAME.right}`;
   return [
     `<svg xmlns="http://www.w3.org/2000/svg" viewBox="0 0 ${WIDTH} ${HEIGHT}" role="img" aria-label="${escapeText(label)}" fill="none" font-family="${FONT}" font-size="20">`,
     `<rect x="${heaterFrom}" y="${FRAME.top}" width="${heaterWidth}" height="${FRAME.bottom - FRAME.top}" fill="currentColor" fill-opacity=".12"/>`,
     `<path d="${frame}" stroke="currentColor" stroke-opacity=".5"/>`,
     `<path d="${dots(picture.time_s, picture.temperature_K, x, y)}" stroke="currentColor" stroke-width="4.5" stroke-linecap="round" stroke-opacity=".45"/>`,
-    `<path d="${curve(picture.before, x, y)}${curve(picture.after, x, y)}" stroke="${VERMILION}" stroke-width="3" stroke-linejoin="round"/>`,
+    `<path d="${picture.fits.map((fit) => curve(fit, x, y)).join("")}" stroke="${VERMILION}" stroke-width="3" stroke-linejoin="round"/>`,
     step,
     `<g fill="currentColor"><text x="${FRAME.left}" y="242">${timeText(from_s)}</text>`,
     `<text x="${FRAME.right}" y="242" text-anchor="end">${timeText(to_s)}</text></g></svg>`,

@@ -343,17 +343,27 @@ function picture(pulse: number, table: PulseTable, i: number, gauss: () => numbe
   const time_s = Float64Array.from({ length: 160 }, (_, j) =>
     j < 40 ? -60 + j : j < 110 ? -20 + 0.6 * (j - 40) : 22 + 3.4 * (j - 110),
   );
+  const settling = (t: number) => after + 0.15 * (after - before) * Math.exp(-Math.max(0, t - 8) / 7);
   const stretch = (from: number, to: number, level: (t: number) => number) => {
     const times = Float64Array.from({ length: 25 }, (_, j) => from + ((to - from) * j) / 24);
     return { time_s: times, temperature_K: times.map(level) };
   };
+  const temperature_K = time_s.map((t) => risen(t) + noise * gauss());
   return {
     pulse,
+    method: "drift",
     time_s,
-    temperature_K: time_s.map((t) => risen(t) + noise * gauss()),
-    before: stretch(-60, 4, () => before),
-    after: stretch(4, 188.6, (t) => after + 0.15 * (after - before) * Math.exp(-Math.max(0, t - 8) / 7)),
-    step_s: 4,
+    temperature_K,
+    residual_K: temperature_K.map((T, j) =>
+      time_s[j]! < 0 || time_s[j]! > 8 ? T - risen(time_s[j]!) : Number.NaN,
+    ),
+    noise_K: noise,
+    fits: [stretch(-60, 4, () => before), stretch(4, 188.6, settling)],
+    windows: [
+      { from_s: -60, to_s: 0 },
+      { from_s: 8, to_s: 188.6 },
+    ],
+    step: { time_s: 4, from_K: before, to_K: settling(4) },
     duration_s: 8,
   };
 }

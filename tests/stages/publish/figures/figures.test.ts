@@ -101,8 +101,8 @@ test("a pulse without fits, or without samples, is still drawn", () => {
   const none = { time_s: new Float64Array(0), temperature_K: new Float64Array(0) };
   const picture = campaign.nights[1]!.pictures[0]!;
   for (const poor of [
-    { ...picture, before: none, after: none },
-    { ...picture, ...none, before: none, after: none },
+    { ...picture, fits: [], windows: [], step: null },
+    { ...picture, ...none, residual_K: none.time_s, fits: [none], windows: [], step: null },
     { ...picture, temperature_K: picture.temperature_K.map(() => Number.NaN) },
   ])
     expect(pulsePictureSvg(poor, "a <pulse>")).not.toMatch(/NaN|undefined|Infinity|<pulse>/);
