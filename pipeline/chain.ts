@@ -13,6 +13,7 @@ import { InputError } from "../stages/errors.js";
 import { amountFromGas } from "../stages/molar/amount.js";
 import { toMolar } from "../stages/molar/to-molar.js";
 import { molarVolume_m3_per_mol, RELATIVE_U_DENSITY } from "../stages/physics/density.js";
+import type { Contents } from "../stages/pulses/cell-laws.js";
 import type { Quantity } from "../stages/quantities/types.js";
 import { separationConfig } from "../stages/separate/config.js";
 import { separate } from "../stages/separate/separate.js";
@@ -48,15 +49,25 @@ export function molarVolumeOf(sample: Campaign["sample"]): Quantity {
   return { value, u: value * RELATIVE_U_DENSITY, text: "published, at vapour pressure" };
 }
 
-/** The stages after the nights, in order: addenda, molar, combine, separate, budget. */
+/** What the nights of the filled cell are told of it. A cell of which nothing is known may still be read. */
+export function contentsOf(addenda: Addenda): Contents {
+  return {
+    kind: "filled",
+    body: addenda.source === "none" ? null : (T_K) => addenda.heatCapacity_J_per_K(T_K),
+  };
+}
+
+/**
+ * The stages after the nights, in order: molar, combine, separate, budget.
+ * @param addenda from the empty-cell nights or the parts, as the filled nights were reduced with
+ */
 export function analyseCampaign(
   campaign: Campaign,
   filled: readonly Night[],
-  empty: readonly Night[],
+  addenda: Addenda,
 ): CampaignResult {
   const amount = amountOf(campaign.sample);
   const molarVolume = molarVolumeOf(campaign.sample);
-  const addenda = addendaOf(campaign, empty);
   const sample = {
     amount,
     condition: campaign.sample.config.condition,
@@ -152,7 +163,8 @@ function usedPoints({ table }: Night): UsedPoints {
   };
 }
 
-function addendaOf(campaign: Campaign, empty: readonly Night[]): Addenda {
+/** @throws InputError where the empty-cell nights do not give their powers */
+export function addendaOf(campaign: Pick<Campaign, "addenda">, empty: readonly Night[]): Addenda {
   if (campaign.addenda.kind === "none") return noAddenda();
   if (campaign.addenda.kind === "parts") return addendaFromParts(campaign.addenda.parts);
   const nights = empty.map(usedPoints);

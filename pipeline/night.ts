@@ -1,8 +1,8 @@
 import { basename } from "node:path";
-import { InputError } from "../stages/errors.js";
 import { sampleFlagWords } from "../stages/ingest/flag-words.js";
 import type { RawNight } from "../stages/ingest/types.js";
 import { analysePulses } from "../stages/pulses/analyse.js";
+import type { Contents } from "../stages/pulses/cell-laws.js";
 import {
   type ClockOffset,
   clockOffset,
@@ -11,7 +11,8 @@ import {
 } from "../stages/pulses/clock-offset.js";
 import type { HeaterConfig, PulsesConfig } from "../stages/pulses/config.js";
 import { type HeaterPulses, heaterPulses } from "../stages/pulses/heater-pulses.js";
-import type { PulsePicture, PulseTable } from "../stages/pulses/types.js";
+import type { PulseMethod, PulsePicture, PulseTable } from "../stages/pulses/types.js";
+import { samplingInterval_s } from "../stages/pulses/window.js";
 import { scaleNotes } from "../stages/thermometry/scale.js";
 import { toTemperature } from "../stages/thermometry/to-temperature.js";
 import type { Calibration } from "../stages/thermometry/types.js";
@@ -36,15 +37,15 @@ export interface Night {
   readonly notes: readonly string[];
 }
 
-/** @throws InputError for a forced method that is not there */
+/** @param contents what is in the cell, and what is known of the body that holds it */
 export function reduceNight(
   raw: RawNight,
   calibration: Calibration,
   run: Run,
   cell: Cell,
   config: PulsesConfig,
+  contents: Contents,
 ): Night {
-  requireMethod(config);
   const trace = toTemperature(raw.thermometer, calibration);
   const { heater } = cell.config;
   const { heater: log } = run.config.logs;
@@ -56,7 +57,15 @@ export function reduceNight(
   const clock = clockOf(run, () => clockOffset(trace, read));
   const pulses = onThermometerClock(read, clock.offset_s);
   const verdicts = run.config.veto.map(({ pulse, reason, keep }) => ({ pulse, reason, keep: keep === true }));
-  const { table, pictures } = analysePulses({ trace, heater: pulses, verdicts, config });
+  const { table, pictures } = analysePulses({
+    trace,
+    heater: pulses,
+    stage: raw.stage,
+    contents,
+    u_clock_s: clockLeft_s(clock, trace.time_s),
+    verdicts,
+    config,
+  });
   return {
     run: run.run,
     table,
@@ -71,6 +80,7 @@ export function reduceNight(
       ),
       ...flaggedSamples(trace.flag),
       ...scaleNotes(calibration),
+      ...methodNotes(table, contents),
       ...(clock.applied
         ? [`heater clock moved by ${clock.offset_s.toFixed(2)} s ± ${clock.u_s.toFixed(2)} s`]
         : []),
@@ -88,6 +98,31 @@ function clockOf(run: Run, estimate: () => ClockOffset): ClockOffset {
     u_s: given.u,
     applied: given.value !== 0,
   };
+}
+
+/** What may be left between the clocks: never less than what lies hidden between two samples. */
+function clockLeft_s(clock: ClockOffset, time_s: Float64Array): number {
+  const hidden_s = samplingInterval_s(time_s) / 4;
+  return Number.isFinite(clock.u_s) ? Math.hypot(clock.u_s, hidden_s) : hidden_s;
+}
+
+/** Which pulses asked for a model, and what that rests on. */
+function methodNotes(table: PulseTable, contents: Contents): string[] {
+  const count = (method: PulseMethod): number => table.method.filter((each) => each === method).length;
+  const [two, one] = [count("two-body"), count("relaxation")];
+  if (two + one === 0) return [];
+  const parts = [
+    ...(two > 0 ? [`${two} with body and liquid`] : []),
+    ...(one > 0 ? [`${one} with one body`] : []),
+  ];
+  return [
+    `forward model for ${two + one} of ${table.method.length} pulses: ${parts.join(", ")}`,
+    ...(two > 0 && contents.kind === "filled" && contents.body === null
+      ? [
+          "the body's own heat capacity is not known to the model: with the campaign's addenda its pulses are surer",
+        ]
+      : []),
+  ];
 }
 
 function flaggedSamples(flag: Uint8Array): string[] {
@@ -133,15 +168,4 @@ function heatSources(run: string, pulses: HeaterPulses, heater: HeaterConfig): E
       relative: pulses.u_length_relative,
     },
   ];
-}
-
-/** One method serves every pulse so far; another is refused by name, never replaced in silence. */
-function requireMethod({ method }: PulsesConfig): void {
-  if (method === "auto" || method === "drift") return;
-  throw new InputError({
-    key: "reduction.pulses.method",
-    value: method,
-    expected: "auto or drift: the others are not in this version",
-    wayOut: "write method: auto; stages/pulses/README.md says for which cells drift lines are not enough",
-  });
 }

@@ -1,7 +1,9 @@
 import { InputError } from "../stages/errors.js";
 import { pointsCsv } from "../stages/publish/dataset.js";
+import type { Contents } from "../stages/pulses/cell-laws.js";
+import { addendaOf, contentsOf } from "./chain.js";
 import type { CommonOptions, ExitCode } from "./cli/common.js";
-import { loadCampaign } from "./config/campaign.js";
+import { type Campaign, loadCampaign } from "./config/campaign.js";
 import { defaultReduction } from "./config/campaign-schema.js";
 import { type Cell, loadCell, loadRun, loadSample, type Run, requireFit } from "./config/load.js";
 import { type Night, reduceNight } from "./night.js";
@@ -13,17 +15,33 @@ interface Job {
   readonly run: Run;
   readonly cell: Cell;
   readonly pulses: ReturnType<typeof defaultReduction>["pulses"];
+  /** What is in the cell; by default a liquid in a body that nobody knows. */
+  readonly contents?: Contents;
 }
 
 /** One night to heat capacity points. @throws InputError */
-export async function reduceRun({ run, cell, pulses }: Job): Promise<Night> {
+export async function reduceRun({ run, cell, pulses, contents }: Job): Promise<Night> {
   const calibration = await readCalibration(cell.thermometer);
-  return reduceNight(await readNight(run), calibration, run, cell, pulses);
+  const filled: Contents = contents ?? { kind: "filled", body: null };
+  return reduceNight(await readNight(run), calibration, run, cell, pulses, filled);
+}
+
+/** What the cell held on a night of a campaign: its empty-cell nights are reduced first. @throws InputError */
+async function contentsOn(campaign: Campaign, run: Run, pulses: Job["pulses"]): Promise<Contents> {
+  const empty: Run[] = campaign.addenda.kind === "runs" ? [...campaign.addenda.runs] : [];
+  if (empty.includes(run)) return { kind: "empty" };
+  // Drift lines ask nothing of the body.
+  if (pulses.method === "drift") return { kind: "filled", body: null };
+  const nights: Night[] = [];
+  for (const each of empty) {
+    nights.push(await reduceRun({ run: each, cell: campaign.cell, pulses, contents: { kind: "empty" } }));
+  }
+  return contentsOf(addendaOf(campaign, nights));
 }
 
 type Options = CommonOptions & Readonly<Record<string, unknown>>;
 
-function jobOf(options: Options): Job {
+async function jobOf(options: Options): Promise<Job> {
   const text = (key: string): string | undefined => options[key] as string | undefined;
   const campaignFile = text("campaign");
   if (campaignFile !== undefined) {
@@ -40,7 +58,8 @@ function jobOf(options: Options): Job {
         wayOut: `rotonwell reduce --campaign ${campaignFile} --run ${all[0]?.run ?? "NIGHT"}`,
       });
     }
-    return { run, cell: campaign.cell, pulses: campaign.reduction.pulses };
+    const { pulses } = campaign.reduction;
+    return { run, cell: campaign.cell, pulses, contents: await contentsOn(campaign, run, pulses) };
   }
   const [runFile, cellFile] = [text("run"), text("cell")];
   if (runFile === undefined || cellFile === undefined) {
@@ -59,7 +78,7 @@ function jobOf(options: Options): Job {
 
 export async function reduceCommandLine(options: Options): Promise<ExitCode> {
   const teller = consoleTeller(options);
-  const night = await reduceRun(jobOf(options));
+  const night = await reduceRun(await jobOf(options));
   const csv = pointsCsv(night.table);
   const out = options["out"] as string | undefined;
   if (out !== undefined) writeWhole(out, csv);

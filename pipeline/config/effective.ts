@@ -48,17 +48,22 @@ export function effectiveRun(campaign: Pick<Campaign, "cell" | "thermometer" | "
   });
 }
 
+/** The addenda as configured. */
+export function effectiveAddenda({ addenda }: Pick<Campaign, "addenda">): Json {
+  return effective(
+    addenda.kind === "runs" ? { ...addenda, runs: addenda.runs.map(({ config }) => config) } : addenda,
+  );
+}
+
 /** Everything configured that a campaign's results depend on; not where they are written. */
 export function effectiveConfig(campaign: Campaign): Json {
-  const { addenda } = campaign;
   return effective({
     campaign: campaign.campaign,
     cell: campaign.cell.config,
     thermometer: campaign.thermometer.config,
     sample: campaign.sample.config,
     runs: campaign.runs.map(({ config }) => config),
-    addenda:
-      addenda.kind === "runs" ? { ...addenda, runs: addenda.runs.map(({ config }) => config) } : addenda,
+    addenda: effectiveAddenda(campaign),
     reduction: campaign.reduction,
     publication: campaign.publication,
   });

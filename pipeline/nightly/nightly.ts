@@ -7,10 +7,11 @@ import { reportHtml } from "../../stages/publish/report.js";
 import { separationJson, separationRecord } from "../../stages/publish/separation-json.js";
 import { nightsText, separationText } from "../../stages/publish/terminal.js";
 import type { CampaignReport, NightReport } from "../../stages/publish/types.js";
+import type { Contents } from "../../stages/pulses/cell-laws.js";
 import { flagNames, PULSE_FLAGS } from "../../stages/pulses/flags.js";
-import { analyseCampaign, type CampaignResult } from "../chain.js";
+import { addendaOf, analyseCampaign, type CampaignResult, contentsOf } from "../chain.js";
 import { type Campaign, loadCampaign } from "../config/campaign.js";
-import { effectiveConfig, effectiveRun } from "../config/effective.js";
+import { effectiveAddenda, effectiveConfig, effectiveRun } from "../config/effective.js";
 import type { Run } from "../config/load.js";
 import type { Located } from "../config/located.js";
 import { type Night, reduceNight } from "../night.js";
@@ -71,35 +72,48 @@ async function locked(campaign: Campaign, teller: Teller): Promise<NightlyResult
   const calibrationDigest = table === null ? [] : [await digestOf(table)];
   const digests: InputDigest[] = [...calibrationDigest];
 
-  const reduceOne = async (run: Run, kind: ReducedNight["kind"]): Promise<ReducedNight> => {
+  const reduceOne = async (
+    run: Run,
+    kind: ReducedNight["kind"],
+    contents: Contents,
+    known: unknown,
+  ): Promise<ReducedNight> => {
     const logs: InputDigest[] = [];
     for (const file of logFiles(run)) logs.push(await digestOf(file));
     digests.push(...logs);
-    const key = valueDigest([version, effectiveRun(campaign, run), calibrationDigest, logs]);
+    const key = valueDigest([version, effectiveRun(campaign, run), calibrationDigest, logs, known]);
     const folder = join(output, "runs", run.run);
-    const known = recallNight(join(folder, "night.json"), key);
+    const stored = recallNight(join(folder, "night.json"), key);
     const night =
-      known ?? reduceNight(await readNight(run), calibration, run, campaign.cell, campaign.reduction.pulses);
-    const status = known === null ? "reduced" : "reused";
+      stored ??
+      reduceNight(await readNight(run), calibration, run, campaign.cell, campaign.reduction.pulses, contents);
+    const status = stored === null ? "reduced" : "reused";
     teller.step(`${status.padEnd(8)} ${run.run}: ${used(night)} of ${night.table.used.length} pulses`);
     writeWhole(join(folder, "points.csv"), pointsCsv(night.table));
     writeWhole(
       join(folder, "run.json"),
       `${JSON.stringify({ run: run.run, kind, key, version, inputs: logs, notes: night.notes, clock: night.clock }, null, 2)}\n`,
     );
-    if (known === null) storeNight(join(folder, "night.json"), key, night);
+    if (stored === null) storeNight(join(folder, "night.json"), key, night);
     return { night, status, kind };
   };
 
   const nights: ReducedNight[] = [];
   const emptyRuns = campaign.addenda.kind === "runs" ? campaign.addenda.runs : [];
-  for (const run of emptyRuns) nights.push(await reduceOne(run, "empty"));
-  for (const run of campaign.runs) nights.push(await reduceOne(run, "sample"));
-
-  teller.step("combining nights, separating phonons and rotons");
+  for (const run of emptyRuns) nights.push(await reduceOne(run, "empty", { kind: "empty" }, null));
   const of = (kind: ReducedNight["kind"]) =>
     nights.filter((night) => night.kind === kind).map(({ night }) => night);
-  const result = analyseCampaign(campaign, of("sample"), of("empty"));
+  // The body must be known before the filled cell's pulses are judged: which heat is whose is not in their traces.
+  const addenda = addendaOf(campaign, of("empty"));
+  const known = {
+    powers: addenda.powers,
+    coefficient: addenda.coefficient,
+    addenda: effectiveAddenda(campaign),
+  };
+  for (const run of campaign.runs) nights.push(await reduceOne(run, "sample", contentsOf(addenda), known));
+
+  teller.step("combining nights, separating phonons and rotons");
+  const result = analyseCampaign(campaign, of("sample"), addenda);
   const report = reportOf(campaign, nights, result, digests, version);
 
   teller.step("drawing figures, writing the report");

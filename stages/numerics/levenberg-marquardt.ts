@@ -20,6 +20,8 @@ export interface LevenbergMarquardtOptions {
   readonly covariance?: "absolute" | "scatter";
   /** Default 500. */
   readonly mostIterations?: number;
+  /** Relative to each parameter: a smaller step ends the search. Default 1e-13. */
+  readonly smallestStep?: number;
 }
 
 export interface NonlinearFit {
@@ -74,6 +76,7 @@ export function levenbergMarquardt(
   let converged = false;
   let iterations = 0;
   const most = options.mostIterations ?? 500;
+  const smallestStep = options.smallestStep ?? SMALLEST_STEP;
 
   differentiate(problem, value, typical, lower, upper, J);
   while (!converged && iterations < most) {
@@ -120,10 +123,10 @@ export function levenbergMarquardt(
         damping *= Math.max(1 / 3, 1 - (2 * gain - 1) ** 3);
         growth = 2;
         differentiate(problem, value, typical, lower, upper, J);
-        if (size <= SMALLEST_STEP) converged = true;
+        if (size <= smallestStep) converged = true;
         break;
       }
-      if (size <= SMALLEST_STEP || predicted <= 4 * Number.EPSILON * Number.EPSILON * cost) {
+      if (size <= smallestStep || predicted <= 4 * Number.EPSILON * Number.EPSILON * cost) {
         converged = true;
         break;
       }

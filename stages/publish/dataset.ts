@@ -107,6 +107,16 @@ const POINT_COLUMNS = [
   "settle_s",
   "step_s",
   "spikes",
+  "link_W_per_K",
+  "u_link_W_per_K",
+  "boundary_time_s",
+  "u_boundary_time_s",
+  "boundary_W_per_K",
+  "u_boundary_W_per_K",
+  "drift_bias",
+  "aic_drift",
+  "aic_two_body",
+  "aic_relaxation",
 ] as const satisfies readonly (keyof PulseTable)[];
 
 /** Every pulse of a night, used or not: one row each, its flags by name and the reason of a veto. */

@@ -1,11 +1,17 @@
 import { median } from "simple-statistics";
-import { SampleFlag } from "../ingest/types.js";
+import { SampleFlag, type StageLog } from "../ingest/types.js";
 import type { TemperatureTrace } from "../thermometry/types.js";
+import type { Contents } from "./cell-laws.js";
+import { type Choice, chooseModel, type Evidence, evidenceOf, NO_EVIDENCE } from "./choose-method.js";
 import type { PulsesConfig } from "./config.js";
+import { type DriftBias, driftBias, smoothedLink } from "./drift-bias.js";
 import { type DriftStep, type PulseSpan, readDriftStep } from "./drift-step.js";
 import { flagBits } from "./flags.js";
+import type { ForwardFit } from "./forward-fit.js";
+import { type ForwardFits, fitForwardNight, type Transient } from "./forward-night.js";
 import type { HeaterPulses } from "./heater-pulses.js";
 import { pulsePicture } from "./picture.js";
+import { type StageWindow, stageWindow } from "./transient-samples.js";
 import { PulseFlag, type PulseMethod, type PulsePicture, type PulseTable } from "./types.js";
 import { sampleRange, samplingInterval_s } from "./window.js";
 
@@ -20,6 +26,14 @@ export interface PulseInputs {
   readonly trace: TemperatureTrace;
   /** On the thermometer's clock. */
   readonly heater: HeaterPulses;
+  /** null where nobody logs it. */
+  readonly stage?: StageLog | null;
+  /** Default: filled, with a body that nobody knows. */
+  readonly contents?: Contents;
+  /** What is left between the two clocks, k = 1. Default: a quarter of a sampling interval. */
+  readonly u_clock_s?: number;
+  /** Lag of the thermometer behind the body; null: found where it matters. */
+  readonly lag_s?: number | null;
   readonly verdicts: readonly Verdict[];
   readonly config: PulsesConfig;
 }
@@ -29,39 +43,101 @@ export interface PulseAnalysis {
   readonly pictures: readonly PulsePicture[];
 }
 
+/** One pulse, whichever way it was read. */
+interface Reading {
+  readonly method: PulseMethod;
+  readonly drift: DriftStep | null;
+  readonly bias: DriftBias | null;
+  readonly fits: ForwardFits | null;
+  /** null where `method` is drift. */
+  readonly fit: ForwardFit | null;
+  readonly evidence: Evidence;
+  readonly Q_J: number;
+  readonly T_before_K: number;
+  readonly dT_K: number;
+  /** Relative, of dT alone. */
+  readonly u_dT: number;
+  readonly link_W_per_K: number;
+  readonly u_link_W_per_K: number;
+}
+
+/** A bias of this part of the uncertainty is not worth a model. */
+const BIAS_SHARE = 0.2;
+
 /**
- * Heat capacity of each pulse, Q/ΔT, with the doubts about it. No pulse is dropped: one that could not be read
- * has NaN where a number is missing, and a flag that says why.
+ * Heat capacity of each pulse, with the doubts about it. No pulse is dropped: one that could not be read has NaN
+ * where a number is missing, and a flag that says why.
+ *
+ * Every pulse is first read with drift lines, which is quick and tells how far they can be trusted; where they cannot, the
+ * forward models are fitted, and evidence chooses.
  */
-export function analysePulses({ trace, heater, verdicts, config }: PulseInputs): PulseAnalysis {
+export function analysePulses(inputs: PulseInputs): PulseAnalysis {
+  const { trace, heater, verdicts, config } = inputs;
+  const stage = inputs.stage ?? null;
   const count = heater.pulse.length;
   const interval_s = samplingInterval_s(trace.time_s);
   const settleOption = config.settle === "auto" ? null : config.settle.value;
   const windowOption = config.window === "auto" ? null : config.window.value;
-  const spans: PulseSpan[] = [];
-  const results: (DriftStep | null)[] = [];
+  const transients: Transient[] = [];
   for (let i = 0; i < count; i++) {
-    const span = spanOf(heater, i, trace, results[i - 1]?.settle_s ?? settleOption ?? 2 * interval_s);
-    spans.push(span);
-    results.push(
-      (heater.flag[i]! & PulseFlag.ZeroEnergy) !== 0
-        ? null
-        : readDriftStep(trace, span, { settle_s: settleOption, window_s: windowOption, interval_s }),
-    );
+    const settled_s = transients[i - 1]?.drift?.settle_s ?? settleOption ?? 2 * interval_s;
+    const span = spanOf(heater, i, trace, settled_s);
+    const dead = (heater.flag[i]! & PulseFlag.ZeroEnergy) !== 0;
+    const drift = dead
+      ? null
+      : readDriftStep(trace, span, { settle_s: settleOption, window_s: windowOption, interval_s });
+    transients.push({ span, Q_J: heater.Q_J[i]!, drift });
   }
+  const spans = transients.map(({ span }) => span);
   const ordinary = ordinaryNight(heater, spans);
+  const links = smoothedLink(
+    transients.map(({ drift }) => (drift === null ? Number.NaN : drift.T_before_K)),
+    transients.map(({ drift, span, Q_J }) =>
+      drift === null ? Number.NaN : kinkLink_W_per_K(drift, span, Q_J),
+    ),
+  );
+  const biases = transients.map(({ drift, span, Q_J }, i) =>
+    drift === null || config.method === "relaxation" || config.method === "two-body"
+      ? null
+      : driftBias(drift, span, {
+          link_per_s: (links[i]! * (drift.T_after_K - drift.T_before_K)) / Q_J,
+          lag_s: inputs.lag_s ?? 0,
+          stage: stageOf(stage, span),
+        }),
+  );
+  const wanted = [...transients.keys()].filter((i) =>
+    wantsModel(config, heater, transients[i]!, biases[i]!, i),
+  );
+  const fits = fitForwardNight(
+    {
+      trace,
+      stage,
+      contents: inputs.contents ?? { kind: "filled", body: null },
+      interval_s,
+      u_start_s: inputs.u_clock_s ?? interval_s / 4,
+      lag_s: inputs.lag_s ?? null,
+      window_s: windowOption,
+    },
+    transients,
+    wanted,
+  );
+  const readings = transients.map((transient, i) =>
+    readingOf(transient, biases[i]!, fits.get(i) ?? null, config.method),
+  );
   const excluding = flagBits(config.exclude_flags);
-  const column = (pick: (result: DriftStep, i: number) => number): Float64Array =>
-    Float64Array.from(results, (result, i) => (result === null ? Number.NaN : pick(result, i)));
+  const column = (pick: (reading: Reading, i: number) => number): Float64Array =>
+    Float64Array.from(readings, (reading, i) => (reading === null ? Number.NaN : pick(reading, i)));
+  const ofTwo = (pick: (fit: ForwardFit) => number): Float64Array =>
+    column(({ method, fit }) => (method === "two-body" && fit !== null ? pick(fit) : Number.NaN));
 
-  const dT_K = column((r) => r.T_after_K - r.T_before_K);
-  const u_dT_K = column((r) => r.u_dT_K);
+  const dT_K = column((r) => r.dT_K);
+  const u_dT_K = column((r) => Math.abs(r.dT_K) * r.u_dT);
   const C = dT_K.map((dT, i) => heater.Q_J[i]! / dT);
   const flag = new Int32Array(count);
   const used = new Uint8Array(count);
   const reason = Array.from({ length: count }, () => "");
   for (let i = 0; i < count; i++) {
-    flag[i] = doubts(trace, heater, spans[i]!, results[i]!, i, ordinary, config);
+    flag[i] = doubts({ trace, heater, stage }, spans[i]!, readings[i]!, i, ordinary, config);
     const verdict = verdicts.find((word) => word.pulse === heater.pulse[i]);
     used[i] = (flag[i]! & excluding) === 0 ? 1 : 0;
     if (verdict !== undefined) {
@@ -78,10 +154,11 @@ export function analysePulses({ trace, heater, verdicts, config }: PulseInputs):
     start_s: heater.start_s,
     duration_s: heater.duration_s,
     T_before_K: column((r) => r.T_before_K),
-    T_after_K: column((r) => r.T_after_K),
-    T_K: column((r) => (r.T_before_K + r.T_after_K) / 2),
+    T_after_K: column((r) => r.T_before_K + r.dT_K),
+    T_K: column((r) => r.T_before_K + r.dT_K / 2),
     dT_K,
-    mean_over_K: dT_K,
+    // A model's C is the one at T itself: the bend of C within the step is part of it.
+    mean_over_K: column((r) => (r.fit === null ? r.dT_K : 0)),
     u_dT_K,
     Q_J: heater.Q_J,
     u_Q_J: heater.u_Q_J,
@@ -91,18 +168,126 @@ export function analysePulses({ trace, heater, verdicts, config }: PulseInputs):
     u_C_total_J_per_K: C.map(
       (value, i) => Math.abs(value) * Math.hypot(u_dT_K[i]! / dT_K[i]!, heater.u_Q_J[i]! / heater.Q_J[i]!),
     ),
-    method: results.map((): PulseMethod => "drift"),
+    method: readings.map((r) => r?.method ?? "drift"),
+    drift_bias: Float64Array.from(biases, (bias) => bias?.left ?? Number.NaN),
+    aic_drift: column((r) => r.evidence.drift),
+    aic_two_body: column((r) => r.evidence.twoBody),
+    aic_relaxation: column((r) => r.evidence.relaxation),
+    link_W_per_K: column((r) => r.link_W_per_K),
+    u_link_W_per_K: column((r) => r.u_link_W_per_K),
+    boundary_time_s: ofTwo((fit) => fit.boundary_s),
+    u_boundary_time_s: ofTwo((fit) => fit.u_boundary_s),
+    boundary_W_per_K: ofTwo((fit) => fit.boundary_W_per_K),
+    u_boundary_W_per_K: ofTwo((fit) => (fit.boundary_W_per_K * fit.u_boundary_s) / fit.boundary_s),
     flag,
     reason,
     used,
-    noise_K: column((r) => r.after.noise_K),
-    drift_K_per_s: column((r) => r.before.slope_K_per_s(0)),
-    settle_s: column((r) => r.settle_s),
-    step_s: column((r) => r.step.time_s),
-    spikes: Int32Array.from(results, (r) => (r === null ? 0 : r.before.spikes + r.after.spikes)),
+    noise_K: column((r) => r.fits?.samples.noise_K ?? r.drift!.after.noise_K),
+    drift_K_per_s: column((r) => r.fit?.drift_K_per_s ?? r.drift!.before.slope_K_per_s(0)),
+    settle_s: column((r) => r.drift?.settle_s ?? Number.NaN),
+    step_s: column((r) => (r.fit === null ? r.drift!.step.time_s : Number.NaN)),
+    spikes: Int32Array.from(readings, (r) => (r === null ? 0 : spikesOf(r))),
   };
-  const pictures = spans.map((span, i) => pulsePicture(trace, heater.pulse[i]!, span, results[i]!));
+  const pictures = spans.map((span, i) => pulsePicture(trace, heater.pulse[i]!, span, readings[i]!));
   return { table, pictures };
+}
+
+/** The body loses more heat after the pulse than before, by K·ΔT: the drifts differ by that over C. */
+function kinkLink_W_per_K(
+  { before, after, T_before_K, T_after_K }: DriftStep,
+  span: PulseSpan,
+  Q_J: number,
+): number {
+  const middle_s = (span.end_s - span.start_s) / 2;
+  const kink_K_per_s = after.slope_K_per_s(middle_s) - before.slope_K_per_s(middle_s);
+  return (-kink_K_per_s * Q_J) / (T_after_K - T_before_K) ** 2;
+}
+
+function stageOf(stage: StageLog | null, span: PulseSpan): StageWindow | null {
+  if (stage === null) return null;
+  return stageWindow(stage, span.start_s, span.earliest_s - span.start_s, span.latest_s - span.start_s);
+}
+
+function wantsModel(
+  config: PulsesConfig,
+  heater: HeaterPulses,
+  { drift, Q_J }: Transient,
+  bias: DriftBias | null,
+  i: number,
+): boolean {
+  if (config.method === "drift" || !(Q_J > 0) || !(heater.duration_s[i]! > 0)) return false;
+  if (config.method !== "auto") return true;
+  if (drift === null || bias === null) return true;
+  const rise_K = drift.T_after_K - drift.T_before_K;
+  // No rise, no model: what is not there is not fitted.
+  if (!(rise_K > 5 * Math.min(drift.u_dT_K, drift.after.noise_K))) return false;
+  const u_C = Math.hypot(drift.u_dT_K / rise_K, heater.u_Q_J[i]! / Q_J);
+  return bias.left > BIAS_SHARE * u_C;
+}
+
+function readingOf(
+  { drift, Q_J, span }: Transient,
+  bias: DriftBias | null,
+  fits: ForwardFits | null,
+  method: PulsesConfig["method"],
+): Reading | null {
+  const lines = drift === null ? null : byDrift(drift, bias, Q_J, span);
+  if (fits === null) return lines;
+  const evidence = evidenceOf(fits, drift);
+  const choice: Choice =
+    method === "relaxation"
+      ? { method, fit: fits.one, u_C: fits.one.u_C }
+      : method === "two-body" && fits.two !== null
+        ? { method, fit: fits.two, u_C: fits.two.u_C }
+        : chooseModel(
+            fits,
+            evidence,
+            lines === null ? Number.NaN : Q_J / lines.dT_K,
+            lines === null ? Number.POSITIVE_INFINITY : lines.u_dT,
+          );
+  const { fit } = choice;
+  if (fit === null) return { ...lines!, fits, evidence };
+  return {
+    method: choice.method,
+    drift,
+    bias,
+    fits,
+    fit,
+    evidence,
+    Q_J,
+    // So that (T_before + T_after)/2 is where the fit's C holds.
+    T_before_K: fit.T_K - Q_J / fit.C_J_per_K / 2,
+    dT_K: Q_J / fit.C_J_per_K,
+    u_dT: choice.u_C,
+    link_W_per_K: fit.link_W_per_K,
+    u_link_W_per_K: fit.u_link_W_per_K,
+  };
+}
+
+function byDrift(drift: DriftStep, bias: DriftBias | null, Q_J: number, span: PulseSpan): Reading {
+  const rise_K = drift.T_after_K - drift.T_before_K;
+  const { lag, u_lag } = bias ?? { lag: 0, u_lag: 0 };
+  const left = bias !== null && Number.isFinite(bias.left) ? bias.left : 0;
+  const dT_K = rise_K * (1 + lag);
+  return {
+    method: "drift",
+    drift,
+    bias,
+    fits: null,
+    fit: null,
+    evidence: NO_EVIDENCE,
+    Q_J,
+    T_before_K: drift.T_before_K,
+    dT_K,
+    // The step's own place enters both the rise read there and the lag, with the same sign.
+    u_dT: Math.hypot(drift.u_dT_K / rise_K, u_lag, left),
+    link_W_per_K: kinkLink_W_per_K(drift, span, Q_J),
+    u_link_W_per_K: Number.NaN,
+  };
+}
+
+function spikesOf({ fit, drift }: Reading): number {
+  return fit === null ? drift!.before.spikes + drift!.after.spikes : fit.spikes;
 }
 
 function spanOf(heater: HeaterPulses, i: number, trace: TemperatureTrace, settleBefore_s: number): PulseSpan {
@@ -133,11 +318,16 @@ function ordinaryNight(heater: HeaterPulses, spans: readonly PulseSpan[]): Ordin
   };
 }
 
+interface Logs {
+  readonly trace: TemperatureTrace;
+  readonly heater: HeaterPulses;
+  readonly stage: StageLog | null;
+}
+
 function doubts(
-  trace: TemperatureTrace,
-  heater: HeaterPulses,
+  { trace, heater, stage }: Logs,
   span: PulseSpan,
-  result: DriftStep | null,
+  reading: Reading | null,
   i: number,
   ordinary: OrdinaryNight,
   config: PulsesConfig,
@@ -156,20 +346,60 @@ function doubts(
       break;
     }
   }
-  if (result === null) return flag | PulseFlag.NoData;
+  if (reading === null) return flag | PulseFlag.NoData;
 
-  const rise = result.T_after_K - result.T_before_K;
-  const share = rise / ((result.T_after_K + result.T_before_K) / 2);
+  const { dT_K: rise, T_before_K, u_dT, drift, fit } = reading;
+  const share = rise / (T_before_K + rise / 2);
   // Three standard uncertainties: below that a rise is not told from none.
-  if (share < config.smallest_rise || rise < 3 * result.u_dT_K) flag |= PulseFlag.RiseTooSmall;
+  if (share < config.smallest_rise || u_dT > 1 / 3) flag |= PulseFlag.RiseTooSmall;
   if (share > config.largest_rise) flag |= PulseFlag.RiseTooLarge;
-  const drift_K = Math.abs(result.before.slope_K_per_s(0)) * (span.end_s - span.start_s);
-  if (drift_K > config.largest_drift_share * Math.abs(rise)) flag |= PulseFlag.DriftTooStrong;
-  if (result.settle_s > config.largest_settle_share * window_s) flag |= PulseFlag.NotSettled;
-  const samples = result.before.samples + result.after.samples;
-  const missing = result.beforeSamples.missing + result.afterSamples.missing;
+  const slope = fit?.drift_K_per_s ?? drift!.before.slope_K_per_s(0);
+  if (Math.abs(slope) * (span.end_s - span.start_s) > config.largest_drift_share * Math.abs(rise))
+    flag |= PulseFlag.DriftTooStrong;
+  const { samples, missing } = samplesUnder(trace, reading, span);
   if (missing > config.largest_missing_share * (samples + missing)) flag |= PulseFlag.SamplesMissing;
-  if (result.before.spikes + result.after.spikes > config.largest_spike_share * samples)
-    flag |= PulseFlag.Spikes;
+  if (spikesOf(reading) > config.largest_spike_share * samples) flag |= PulseFlag.Spikes;
+  if (fit === null) {
+    if (drift!.settle_s > config.largest_settle_share * window_s) flag |= PulseFlag.NotSettled;
+    const window = stageOf(stage, span);
+    const after_s = drift!.afterSamples.time_s[drift!.afterSamples.time_s.length - 1]!;
+    const moved = window === null ? 0 : stageHeat(window, reading, span, after_s);
+    if (moved > config.largest_stage_share) flag |= PulseFlag.StageNotSteady;
+    return flag;
+  }
+  if (fit.boundary_s > config.largest_boundary_share * window_s) flag |= PulseFlag.SlowBoundary;
+  if (fit.misfit * reading.fits!.samples.noise_K > config.largest_misfit * Math.abs(rise))
+    flag |= PulseFlag.Unexplained;
   return flag;
+}
+
+/** Usable samples under the fit, and those of its windows that carry no temperature. */
+function samplesUnder(trace: TemperatureTrace, { drift, fit, fits }: Reading, span: PulseSpan) {
+  if (fit === null) {
+    return {
+      samples: drift!.before.samples + drift!.after.samples,
+      missing: drift!.beforeSamples.missing + drift!.afterSamples.missing,
+    };
+  }
+  const { time_s, count } = fits!.samples;
+  const samples = count.reduce((sum, n) => sum + n, 0);
+  const range = sampleRange(
+    trace.time_s,
+    span.start_s + time_s[0]!,
+    span.start_s + time_s[time_s.length - 1]!,
+  );
+  let missing = 0;
+  for (let j = range.from; j < range.to; j++) if (trace.flag[j] !== 0) missing++;
+  return { samples, missing };
+}
+
+/** Heat that came over the link because the stage was elsewhere between the two drifts, relative to the rise. */
+function stageHeat(window: StageWindow, reading: Reading, span: PulseSpan, after_s: number): number {
+  const { drift, Q_J, link_W_per_K } = reading;
+  const settled_s = span.end_s - span.start_s + drift!.settle_s;
+  const before = window.mean_K(drift!.beforeSamples.time_s[0]!, 0);
+  const during = window.mean_K(0, settled_s);
+  const after = window.mean_K(settled_s, after_s);
+  const moved_K = Math.max(Math.abs(during - before), Math.abs(during - after));
+  return Math.abs((link_W_per_K * moved_K * settled_s) / Q_J);
 }

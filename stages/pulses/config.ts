@@ -14,7 +14,7 @@ export const pulsesSchema = z
   .strictObject({
     method: oneOf(
       ["auto", "drift", "two-body", "relaxation"],
-      "How the temperature step is found: drift lines; drift lines and the settling of a second body; a forward model of the whole transient; auto lets the residuals choose for each pulse.",
+      "How C is found: drift lines and equal areas; a forward model of body and liquid; a forward model of one body; auto asks for a model where drift lines would be biased, and lets evidence choose for each pulse.",
     ),
     settle: quantityOr("auto", "time", {
       description:
@@ -41,6 +41,18 @@ export const pulsesSchema = z
       "Largest part of the samples under a fit that may be missing: samples-missing.",
     ),
     largest_spike_share: share(0.05, "Largest part of the samples under a fit that may be outliers: spikes."),
+    largest_boundary_share: share(
+      0.34,
+      "Largest part of the window that body and liquid may take to come to one temperature: slow-boundary.",
+    ),
+    largest_stage_share: share(
+      0.02,
+      "Largest part of the rise that the stage's motion may add unseen by the method: stage-not-steady.",
+    ),
+    largest_misfit: share(
+      0.005,
+      "Largest misfit of the chosen model that noise does not explain, relative to the rise: unexplained.",
+    ),
     heater_resistance_tolerance: share(
       0.02,
       "Largest relative distance of the heater's resistance from the night's median: heater-resistance.",

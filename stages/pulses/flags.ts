@@ -50,6 +50,21 @@ export const PULSE_FLAGS: readonly FlagWords[] = [
     name: "heater-left-on",
     words: "heater still on when the log ends or the next pulse begins",
   },
+  {
+    bit: PulseFlag.SlowBoundary,
+    name: "slow-boundary",
+    words: "body and liquid take over a third of the window to come to one temperature",
+  },
+  {
+    bit: PulseFlag.StageNotSteady,
+    name: "stage-not-steady",
+    words: "stage moved by enough to matter during the pulse or its drifts",
+  },
+  {
+    bit: PulseFlag.Unexplained,
+    name: "unexplained",
+    words: "no method describes the trace: heat that no log shows, or a cell of another kind",
+  },
 ];
 
 export const PULSE_FLAG_NAMES: readonly string[] = PULSE_FLAGS.map((flag) => flag.name);

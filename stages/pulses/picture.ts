@@ -1,17 +1,29 @@
 import type { TemperatureTrace } from "../thermometry/types.js";
 import type { DriftFit } from "./drift.js";
 import type { DriftStep, PulseSpan } from "./drift-step.js";
-import type { FittedCurve, PulsePicture } from "./types.js";
-import { type Samples, sampleRange, usableSamples } from "./window.js";
+import type { ForwardFit } from "./forward-fit.js";
+import type { ForwardFits } from "./forward-night.js";
+import type { FittedCurve, PulseMethod, PulsePicture } from "./types.js";
+import { firstAtOrAfter, type Samples, sampleRange, usableSamples } from "./window.js";
 
 const POINTS = 160;
 
-/** Samples around a pulse, thinned evenly but whole around the pulse itself, and the two drifts. */
+/** How a pulse was read: drift lines, or a model on its own blocks of samples. */
+export interface PictureSource {
+  readonly method: PulseMethod;
+  readonly drift: DriftStep | null;
+  readonly fit: ForwardFit | null;
+  readonly fits: ForwardFits | null;
+  readonly T_before_K: number;
+  readonly dT_K: number;
+}
+
+/** Samples around a pulse, thinned evenly but whole around the pulse itself, and what was fitted to them. */
 export function pulsePicture(
   trace: TemperatureTrace,
   pulse: number,
   span: PulseSpan,
-  result: DriftStep | null,
+  source: PictureSource | null,
 ): PulsePicture {
   const { start_s, end_s } = span;
   const seen = usableSamples(trace, sampleRange(trace.time_s, span.earliest_s, span.latest_s), start_s);
@@ -26,34 +38,64 @@ export function pulsePicture(
   });
   const time_s = Float64Array.from(kept, (i) => seen.time_s[i]!);
   const temperature_K = Float64Array.from(kept, (i) => seen.temperature_K[i]!);
-  const parts =
-    result === null
-      ? []
-      : [part(result.before, result.beforeSamples), part(result.after, result.afterSamples)];
+  const fitted = fittedOf(source, length_s);
   return {
     pulse,
-    method: "drift",
+    method: source?.method ?? "drift",
     time_s,
     temperature_K,
-    residual_K: temperature_K.map((T, i) => {
-      const t = time_s[i]!;
-      const under = parts.find(({ from_s, to_s }) => t >= from_s && t <= to_s);
-      return under === undefined ? Number.NaN : T - under.fit.value_K(t);
-    }),
-    noise_K: result === null ? Number.NaN : result.after.noise_K,
-    fits:
-      result === null
-        ? []
-        : [
-            line(result.before, parts[0]!.from_s, result.step.time_s),
-            line(result.after, result.step.time_s, parts[1]!.to_s),
-          ],
-    windows: parts.map(({ from_s, to_s }) => ({ from_s, to_s })),
-    step:
-      result === null
-        ? null
-        : { time_s: result.step.time_s, from_K: result.T_before_K, to_K: result.T_after_K },
+    residual_K: temperature_K.map((T, i) => T - (fitted?.value_K(time_s[i]!) ?? Number.NaN)),
+    noise_K: fitted?.noise_K ?? Number.NaN,
+    fits: fitted?.curves ?? [],
+    windows: fitted?.windows ?? [],
+    step: fitted?.step ?? null,
     duration_s: length_s,
+  };
+}
+
+interface Fitted extends Pick<PulsePicture, "windows" | "step" | "noise_K"> {
+  readonly curves: readonly FittedCurve[];
+  /** NaN outside the windows. */
+  value_K(time_s: number): number;
+}
+
+function fittedOf(source: PictureSource | null, length_s: number): Fitted | null {
+  if (source === null) return null;
+  const { fit, fits, drift } = source;
+  return fit === null || fits === null ? ofDrift(drift!) : ofModel(fit, fits, source, length_s);
+}
+
+function ofDrift(drift: DriftStep): Fitted {
+  const parts = [part(drift.before, drift.beforeSamples), part(drift.after, drift.afterSamples)] as const;
+  const t = drift.step.time_s;
+  return {
+    curves: [line(drift.before, parts[0].from_s, t), line(drift.after, t, parts[1].to_s)],
+    windows: parts.map(({ from_s, to_s }) => ({ from_s, to_s })),
+    step: { time_s: t, from_K: drift.T_before_K, to_K: drift.T_after_K },
+    noise_K: drift.after.noise_K,
+    value_K(time_s) {
+      const under = parts.find(({ from_s, to_s }) => time_s >= from_s && time_s <= to_s);
+      return under === undefined ? Number.NaN : under.fit.value_K(time_s);
+    },
+  };
+}
+
+/** A model is drawn through its own blocks, which are closest where the curve bends most. */
+function ofModel(fit: ForwardFit, { samples }: ForwardFits, source: PictureSource, length_s: number): Fitted {
+  const { time_s } = samples;
+  const end = time_s.length - 1;
+  const middle_s = fit.shift_s + length_s / 2;
+  return {
+    curves: [{ time_s, temperature_K: fit.curve_K }],
+    windows: [{ from_s: time_s[0]!, to_s: time_s[end]! }],
+    step: { time_s: middle_s, from_K: source.T_before_K, to_K: source.T_before_K + source.dT_K },
+    noise_K: samples.noise_K,
+    value_K(t) {
+      if (t < time_s[0]! || t > time_s[end]!) return Number.NaN;
+      const next = Math.min(end, Math.max(1, firstAtOrAfter(time_s, t)));
+      const [a, b] = [time_s[next - 1]!, time_s[next]!];
+      return fit.curve_K[next - 1]! + ((fit.curve_K[next]! - fit.curve_K[next - 1]!) * (t - a)) / (b - a);
+    },
   };
 }
 

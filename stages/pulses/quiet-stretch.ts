@@ -1,5 +1,6 @@
 import { fitPolynomial } from "../numerics/polynomial.js";
 import { medianOf } from "./order.js";
+import { neighbourNoise_K } from "./transient-samples.js";
 import type { Samples } from "./window.js";
 
 /** A part of a window in which nothing happens but a drift; times as in the samples given. */
@@ -161,22 +162,4 @@ function inBlocks(samples: Samples): Blocks {
   // A median of m normal values scatters √(π/2) more than their mean, and as they do for m = 1.
   const noise_K = (neighbourNoise_K(samples.temperature_K) * (size > 2 ? 1.2533 : 1)) / Math.sqrt(size);
   return { time_s, temperature_K, interval_s, noise_K };
-}
-
-/** Noise of one sample from second differences, which no drift touches; never below the digitising step's own. */
-function neighbourNoise_K(T: Float64Array): number {
-  const n = T.length;
-  const magnitude = new Float64Array(n - 2);
-  let step = Number.POSITIVE_INFINITY;
-  for (let i = 1; i < n - 1; i++) {
-    magnitude[i - 1] = Math.abs(T[i - 1]! - 2 * T[i]! + T[i + 1]!);
-    const d = Math.abs(T[i + 1]! - T[i]!);
-    if (d > 0 && d < step) step = d;
-  }
-  const white = (1.4826 * medianOf(magnitude)) / Math.sqrt(6);
-  return Math.max(
-    white,
-    Number.isFinite(step) ? Math.min(step, 1e-3 * T[0]!) / Math.sqrt(12) : 0,
-    1e-12 * T[0]!,
-  );
 }

@@ -14,6 +14,9 @@ export const PulseFlag = {
   ZeroEnergy: 2048,
   VoltageInverted: 4096,
   HeaterLeftOn: 8192,
+  SlowBoundary: 16384,
+  StageNotSteady: 32768,
+  Unexplained: 65536,
 } as const;
 
 export type PulseMethod = "drift" | "two-body" | "relaxation";
@@ -24,6 +27,7 @@ export interface PulseTable {
   readonly pulse: Int32Array;
   readonly start_s: Float64Array;
   readonly duration_s: Float64Array;
+  /** Body and liquid in balance, before the heat and with it. */
   readonly T_before_K: Float64Array;
   readonly T_after_K: Float64Array;
   /** (T_before + T_after)/2, to which C belongs. */
@@ -31,7 +35,7 @@ export interface PulseTable {
   readonly dT_K: Float64Array;
   /** Width in T over which C is a mean; 0 where the method gives C at T itself. */
   readonly mean_over_K: Float64Array;
-  /** Repeatability of dT from the drift fits, k = 1. */
+  /** Repeatability of dT from the fits, k = 1. */
   readonly u_dT_K: Float64Array;
   /** Heat that reached the cell, lead heat included. */
   readonly Q_J: Float64Array;
@@ -44,6 +48,21 @@ export interface PulseTable {
   /** Repeatability, k = 1. */
   readonly u_C_total_J_per_K: Float64Array;
   readonly method: readonly PulseMethod[];
+  /** What drift lines are expected to be wrong by after their correction, relative to C; Infinity: not bounded. */
+  readonly drift_bias: Float64Array;
+  /** AIC of each method on the same samples, above the lowest; NaN where it was not tried. */
+  readonly aic_drift: Float64Array;
+  readonly aic_two_body: Float64Array;
+  readonly aic_relaxation: Float64Array;
+  /** Weak link to the stage. */
+  readonly link_W_per_K: Float64Array;
+  readonly u_link_W_per_K: Float64Array;
+  /** Time in which body and liquid come to one temperature; NaN unless the method is two-body. */
+  readonly boundary_time_s: Float64Array;
+  readonly u_boundary_time_s: Float64Array;
+  /** Thermal conductance between body and liquid; NaN unless the method is two-body. */
+  readonly boundary_W_per_K: Float64Array;
+  readonly u_boundary_W_per_K: Float64Array;
   /** Bits of PulseFlag. */
   readonly flag: Int32Array;
   /** "" or the reason of a veto, as written in run.yaml. */
@@ -55,7 +74,7 @@ export interface PulseTable {
   readonly drift_K_per_s: Float64Array;
   /** Skipped after the heater stopped. */
   readonly settle_s: Float64Array;
-  /** Where the step is read, after the start of the pulse. */
+  /** Where drift lines read the step, after the start of the pulse; NaN for the other methods. */
   readonly step_s: Float64Array;
   /** Samples left out as spikes, of those under both fits. */
   readonly spikes: Int32Array;

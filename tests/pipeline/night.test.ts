@@ -3,17 +3,18 @@ import { expect, test } from "vitest";
 import { loadCell, loadRun } from "../../pipeline/config/load.js";
 import { reduceNight } from "../../pipeline/night.js";
 import { readCalibration, readNight } from "../../pipeline/read-night.js";
-import { InputError } from "../../stages/errors.js";
+import type { Contents } from "../../stages/pulses/cell-laws.js";
 import { heaterSchema, pulsesSchema } from "../../stages/pulses/config.js";
 import { ROOT } from "./program.js";
 
 async function demoNight(heater: object, pulses: object = {}) {
+  const contents: Contents = { kind: "filled", body: null };
   const run = loadRun(join(ROOT, "fixtures/nights/fjord-7/2026-11-14-a/run.yaml"));
   const cell = loadCell(join(ROOT, "configs/cells/thimble.yaml"));
   const raw = await readNight(run);
   const calibration = await readCalibration(cell.thermometer);
   const edited = { ...cell, config: { ...cell.config, heater: heaterSchema.parse(heater) } };
-  return { raw, night: reduceNight(raw, calibration, run, edited, pulsesSchema.parse(pulses)) };
+  return { raw, night: reduceNight(raw, calibration, run, edited, pulsesSchema.parse(pulses), contents) };
 }
 
 test("a lead quantity of 0 with a ± keeps its source", async () => {
@@ -27,11 +28,4 @@ test("a lead quantity of 0 with a ± keeps its source", async () => {
   expect(Math.abs(share / 2.4e-4 - 1)).toBeLessThan(0.01);
   const resistance = await source({ lead_resistance: "0 ± 2 Ohm", lead_share: "0.5" }, "lead_resistance");
   expect(Math.abs(resistance / 1e-3 - 1)).toBeLessThan(0.01);
-});
-
-test("a method that is not there is refused, not replaced", async () => {
-  await expect(demoNight({}, { method: "relaxation" })).rejects.toThrow(InputError);
-  await expect(demoNight({}, { method: "relaxation" })).rejects.toThrow(
-    'reduction.pulses.method is "relaxation"; expected auto or drift: the others are not in this version.',
-  );
 });

@@ -313,6 +313,16 @@ function sampleNight(run: string, index: number, pulses: number, gauss: () => nu
     drift_K_per_s: constant(1e-7),
     settle_s: constant(6),
     step_s: constant(4),
+    drift_bias: constant(1e-5),
+    aic_drift: constant(Number.NaN),
+    aic_two_body: constant(Number.NaN),
+    aic_relaxation: constant(Number.NaN),
+    link_W_per_K: constant(4e-9),
+    u_link_W_per_K: constant(Number.NaN),
+    boundary_time_s: constant(Number.NaN),
+    u_boundary_time_s: constant(Number.NaN),
+    boundary_W_per_K: constant(Number.NaN),
+    u_boundary_W_per_K: constant(Number.NaN),
     spikes: Int32Array.from(T_K, () => 0),
   };
   return {
