@@ -19,6 +19,7 @@ import { separationConfig } from "../stages/separate/config.js";
 import { separate } from "../stages/separate/separate.js";
 import type { Separation } from "../stages/separate/types.js";
 import type { Campaign } from "./config/campaign.js";
+import { heliumShape } from "./helium-shape.js";
 import type { EffectOfHeat, Night } from "./night.js";
 
 /** Everything a campaign's nights come to. */
@@ -54,6 +55,7 @@ export function contentsOf(addenda: Addenda): Contents {
   return {
     kind: "filled",
     body: addenda.source === "none" ? null : (T_K) => addenda.heatCapacity_J_per_K(T_K),
+    shape: heliumShape(),
   };
 }
 

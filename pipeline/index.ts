@@ -12,6 +12,7 @@ export { effectiveConfig } from "./config/effective.js";
 export { loadCell, loadRun, loadSample, loadScenario, loadThermometer } from "./config/load.js";
 export { jsonSchema } from "./config/schemas.js";
 export { type FillPressure, fillPressure } from "./fill-pressure.js";
+export { heliumShape } from "./helium-shape.js";
 export { type Night, reduceNight } from "./night.js";
 export { type NightlyResult, nightlyRecord, nightlyText, runNightly } from "./nightly/nightly.js";
 export { publishCampaign } from "./publish.js";

@@ -63,6 +63,8 @@ export function reduceNight(
     stage: raw.stage,
     contents,
     u_clock_s: clockLeft_s(clock, trace.time_s),
+    // An edge lies anywhere between two samples of the heater.
+    u_start_s: raw.heater.kind === "events" ? 0 : samplingInterval_s(raw.heater.time_s) / Math.sqrt(12),
     verdicts,
     config,
   });

@@ -6,6 +6,7 @@ import type { CommonOptions, ExitCode } from "./cli/common.js";
 import { type Campaign, loadCampaign } from "./config/campaign.js";
 import { defaultReduction } from "./config/campaign-schema.js";
 import { type Cell, loadCell, loadRun, loadSample, type Run, requireFit } from "./config/load.js";
+import { heliumShape } from "./helium-shape.js";
 import { type Night, reduceNight } from "./night.js";
 import { consoleTeller } from "./progress.js";
 import { readCalibration, readNight } from "./read-night.js";
@@ -22,8 +23,11 @@ interface Job {
 /** One night to heat capacity points. @throws InputError */
 export async function reduceRun({ run, cell, pulses, contents }: Job): Promise<Night> {
   const calibration = await readCalibration(cell.thermometer);
-  const filled: Contents = contents ?? { kind: "filled", body: null };
-  return reduceNight(await readNight(run), calibration, run, cell, pulses, filled);
+  return reduceNight(await readNight(run), calibration, run, cell, pulses, contents ?? unknownBody());
+}
+
+function unknownBody(): Contents {
+  return { kind: "filled", body: null, shape: heliumShape() };
 }
 
 /** What the cell held on a night of a campaign: its empty-cell nights are reduced first. @throws InputError */
@@ -31,7 +35,7 @@ async function contentsOn(campaign: Campaign, run: Run, pulses: Job["pulses"]): 
   const empty: Run[] = campaign.addenda.kind === "runs" ? [...campaign.addenda.runs] : [];
   if (empty.includes(run)) return { kind: "empty" };
   // Drift lines ask nothing of the body.
-  if (pulses.method === "drift") return { kind: "filled", body: null };
+  if (pulses.method === "drift") return unknownBody();
   const nights: Night[] = [];
   for (const each of empty) {
     nights.push(await reduceRun({ run: each, cell: campaign.cell, pulses, contents: { kind: "empty" } }));

@@ -1,4 +1,4 @@
-import { Matrix } from "ml-matrix";
+import { Matrix, QrDecomposition } from "ml-matrix";
 import { Defect } from "../errors.js";
 import { scaledQr } from "./scaled-qr.js";
 
@@ -104,8 +104,9 @@ export function levenbergMarquardt(
       converged = true;
       break;
     }
+    const reduced = reduce(J, residual, free);
     for (;;) {
-      const step = dampedStep(J, residual, free, scale, damping);
+      const step = dampedStep(reduced, free, scale, damping, p);
       const trial = value.map((v, j) => clamp(v + step[j]!, j));
       const moved = trial.map((v, j) => v - value[j]!);
       const size = Math.max(
@@ -181,26 +182,37 @@ function half(residual: Float64Array): number {
   return sum / 2;
 }
 
+/** R of the free columns' QR, and Qᵀ·residual as its last column: all that a damped step needs of m rows. */
+function reduce(J: Matrix, residual: Float64Array, free: readonly number[]): Matrix {
+  const k = free.length;
+  const wide = Matrix.zeros(Math.max(J.rows, k + 1), k + 1);
+  for (let i = 0; i < J.rows; i++) {
+    for (let j = 0; j < k; j++) wide.set(i, j, J.get(i, free[j]!));
+    wide.set(i, k, residual[i]!);
+  }
+  return new QrDecomposition(wide).upperTriangularMatrix;
+}
+
 /** Length p; 0 for the parameters that are held. */
 function dampedStep(
-  J: Matrix,
-  residual: Float64Array,
+  reduced: Matrix,
   free: readonly number[],
   scale: Float64Array,
   damping: number,
+  p: number,
 ): Float64Array {
-  const m = J.rows;
-  const stacked = Matrix.zeros(m + free.length, free.length);
-  const right = new Float64Array(m + free.length);
-  for (let i = 0; i < m; i++) {
-    for (let k = 0; k < free.length; k++) stacked.set(i, k, J.get(i, free[k]!));
-    right[i] = -residual[i]!;
+  const k = free.length;
+  const stacked = Matrix.zeros(2 * k, k);
+  const right = new Float64Array(2 * k);
+  for (let i = 0; i < k; i++) {
+    for (let j = i; j < k; j++) stacked.set(i, j, reduced.get(i, j));
+    right[i] = -reduced.get(i, k);
+    stacked.set(k + i, i, Math.sqrt(damping) * scale[free[i]!]!);
   }
-  for (let k = 0; k < free.length; k++) stacked.set(m + k, k, Math.sqrt(damping) * scale[free[k]!]!);
   const solution = scaledQr(stacked).solve(right);
-  const step = new Float64Array(J.columns);
-  free.forEach((j, k) => {
-    step[j] = Number.isNaN(solution[k]!) ? 0 : solution[k]!;
+  const step = new Float64Array(p);
+  free.forEach((j, i) => {
+    step[j] = Number.isNaN(solution[i]!) ? 0 : solution[i]!;
   });
   return step;
 }

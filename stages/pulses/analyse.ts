@@ -8,10 +8,11 @@ import { type DriftBias, driftBias, smoothedLink } from "./drift-bias.js";
 import { type DriftStep, type PulseSpan, readDriftStep } from "./drift-step.js";
 import { flagBits } from "./flags.js";
 import type { ForwardFit } from "./forward-fit.js";
-import { type ForwardFits, fitForwardNight, type Transient } from "./forward-night.js";
+import { type ForwardFits, fitForwardNight } from "./forward-night.js";
 import type { HeaterPulses } from "./heater-pulses.js";
 import { pulsePicture } from "./picture.js";
-import { type StageWindow, stageWindow } from "./transient-samples.js";
+import type { Transient } from "./prepared-transient.js";
+import { type StageWindow, stageWindow } from "./stage-window.js";
 import { PulseFlag, type PulseMethod, type PulsePicture, type PulseTable } from "./types.js";
 import { sampleRange, samplingInterval_s } from "./window.js";
 
@@ -32,6 +33,8 @@ export interface PulseInputs {
   readonly contents?: Contents;
   /** What is left between the two clocks, k = 1. Default: a quarter of a sampling interval. */
   readonly u_clock_s?: number;
+  /** Of each pulse's own start, where a sampled log shows it to its interval only. Default 0. */
+  readonly u_start_s?: number;
   /** Lag of the thermometer behind the body; null: found where it matters. */
   readonly lag_s?: number | null;
   readonly verdicts: readonly Verdict[];
@@ -78,26 +81,24 @@ export function analysePulses(inputs: PulseInputs): PulseAnalysis {
   const interval_s = samplingInterval_s(trace.time_s);
   const settleOption = config.settle === "auto" ? null : config.settle.value;
   const windowOption = config.window === "auto" ? null : config.window.value;
-  const transients: Transient[] = [];
+  const read: Omit<Transient, "sound">[] = [];
   for (let i = 0; i < count; i++) {
-    const settled_s = transients[i - 1]?.drift?.settle_s ?? settleOption ?? 2 * interval_s;
+    const settled_s = read[i - 1]?.drift?.settle_s ?? settleOption ?? 2 * interval_s;
     const span = spanOf(heater, i, trace, settled_s);
     const dead = (heater.flag[i]! & PulseFlag.ZeroEnergy) !== 0;
     const drift = dead
       ? null
       : readDriftStep(trace, span, { settle_s: settleOption, window_s: windowOption, interval_s });
-    transients.push({ span, Q_J: heater.Q_J[i]!, drift });
+    read.push({ span, Q_J: heater.Q_J[i]!, drift });
   }
-  const spans = transients.map(({ span }) => span);
+  const spans = read.map(({ span }) => span);
   const ordinary = ordinaryNight(heater, spans);
   const links = smoothedLink(
-    transients.map(({ drift }) => (drift === null ? Number.NaN : drift.T_before_K)),
-    transients.map(({ drift, span, Q_J }) =>
-      drift === null ? Number.NaN : kinkLink_W_per_K(drift, span, Q_J),
-    ),
+    read.map(({ drift }) => (drift === null ? Number.NaN : drift.T_before_K)),
+    read.map(({ drift, span, Q_J }) => (drift === null ? Number.NaN : kinkLink_W_per_K(drift, span, Q_J))),
   );
-  const biases = transients.map(({ drift, span, Q_J }, i) =>
-    drift === null || config.method === "relaxation" || config.method === "two-body"
+  const biases = read.map(({ drift, span, Q_J }, i) =>
+    drift === null
       ? null
       : driftBias(drift, span, {
           link_per_s: (links[i]! * (drift.T_after_K - drift.T_before_K)) / Q_J,
@@ -105,6 +106,7 @@ export function analysePulses(inputs: PulseInputs): PulseAnalysis {
           stage: stageOf(stage, span),
         }),
   );
+  const transients = read.map((each, i): Transient => ({ ...each, sound: Number.isFinite(biases[i]?.left) }));
   const wanted = [...transients.keys()].filter((i) =>
     wantsModel(config, heater, transients[i]!, biases[i]!, i),
   );
@@ -114,7 +116,8 @@ export function analysePulses(inputs: PulseInputs): PulseAnalysis {
       stage,
       contents: inputs.contents ?? { kind: "filled", body: null },
       interval_s,
-      u_start_s: inputs.u_clock_s ?? interval_s / 4,
+      u_clock_s: inputs.u_clock_s ?? interval_s / 4,
+      u_start_s: inputs.u_start_s ?? 0,
       lag_s: inputs.lag_s ?? null,
       window_s: windowOption,
     },
@@ -205,7 +208,13 @@ function kinkLink_W_per_K(
 
 function stageOf(stage: StageLog | null, span: PulseSpan): StageWindow | null {
   if (stage === null) return null;
-  return stageWindow(stage, span.start_s, span.earliest_s - span.start_s, span.latest_s - span.start_s);
+  return stageWindow(
+    stage,
+    span.start_s,
+    span.earliest_s - span.start_s,
+    span.latest_s - span.start_s,
+    "as read",
+  );
 }
 
 function wantsModel(

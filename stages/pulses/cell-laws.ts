@@ -6,8 +6,18 @@ import type { CellShape } from "./transient-model.js";
 export type Contents =
   /** The empty cell: one body. */
   | { readonly kind: "empty" }
-  /** Body and liquid; the body's own heat capacity from the addenda, null where nobody knows it. */
-  | { readonly kind: "filled"; readonly body: ((T_K: number) => number) | null };
+  | {
+      readonly kind: "filled";
+      /** The body's own heat capacity, J/K, from the addenda; null where nobody knows it. */
+      readonly body: HeatFunction | null;
+      /**
+       * A heat capacity that bends with temperature about as the liquid's does, in any unit. The night's own is read as a
+       * slow function times this one; null: times T³.
+       */
+      readonly shape?: HeatFunction | null;
+    };
+
+export type HeatFunction = (T_K: number) => number;
 
 /** A heat capacity as a local power law. */
 export interface LocalLaw {
@@ -16,25 +26,29 @@ export interface LocalLaw {
 }
 
 const NEIGHBOURS = 13;
+/** Beyond a factor of 1.6 in T a neighbour tells nothing of the local slope. */
+const REACH = 0.5;
 
 /**
- * d ln C/d ln T and its slope, from a parabola through the nearest points in ln T: over the few per cent of one pulse
- * that is all that shows.
+ * d ln C/d ln T and its slope, from a parabola through ln(C/shape) at the nearest points in ln T: over the few per cent of
+ * one pulse that is all that shows.
  * @param T_K, C length n, any order; points that are not positive do not count
- * @param otherwise where fewer than three temperatures are known
+ * @param shape bends about as C does
  */
-export function localLaw(T_K: Float64Array, C: Float64Array, at_K: number, otherwise: LocalLaw): LocalLaw {
+export function localLaw(T_K: Float64Array, C: Float64Array, at_K: number, shape: HeatFunction): LocalLaw {
   const points = [...T_K.keys()]
     .filter((i) => T_K[i]! > 0 && C[i]! > 0 && Number.isFinite(C[i]!))
-    .map((i) => ({ x: Math.log(T_K[i]! / at_K), y: Math.log(C[i]!) }))
+    .map((i) => ({ x: Math.log(T_K[i]! / at_K), y: Math.log(C[i]! / shape(T_K[i]!)) }))
     .sort((a, b) => Math.abs(a.x) - Math.abs(b.x))
-    .slice(0, NEIGHBOURS);
+    .filter(({ x }, rank) => rank < NEIGHBOURS && (rank < 4 || Math.abs(x) < REACH));
+  const known = lawOf(shape, at_K);
   const span = Math.max(...points.map(({ x }) => x)) - Math.min(...points.map(({ x }) => x));
-  if (points.length < 3 || !(span > 0.05)) return otherwise;
+  if (points.length < 3 || !(span > 0.05)) return known;
   const x = Float64Array.from(points, (point) => point.x);
   const y = Float64Array.from(points, (point) => point.y);
   const weight = new Float64Array(points.length).fill(1);
-  const degree = points.length >= 7 ? 2 : 1;
+  const distinct = new Set(points.map((point) => Math.round(100 * point.x))).size;
+  const degree = distinct >= 5 ? 2 : 1;
   let fit = fitPolynomial(x, y, weight, degree);
   // A pulse that was read badly must not bend the law of its neighbours.
   for (let round = 0; round < 6; round++) {
@@ -48,7 +62,10 @@ export function localLaw(T_K: Float64Array, C: Float64Array, at_K: number, other
     fit = fitPolynomial(x, y, weight, degree);
   }
   const h = span / 100;
-  return { power: fit.slope(0), bend: (fit.slope(h) - fit.slope(-h)) / (2 * h) };
+  return {
+    power: known.power + fit.slope(0),
+    bend: known.bend + (fit.slope(h) - fit.slope(-h)) / (2 * h),
+  };
 }
 
 /** The same of a known function. */
@@ -58,36 +75,25 @@ export function lawOf(heatCapacity: (T_K: number) => number, at_K: number): Loca
   return { power: (y[2]! - y[0]!) / (2 * h), bend: (y[2]! - 2 * y[1]! + y[0]!) / (h * h) };
 }
 
-/** Helium well below a kelvin; the fallback of a night of one temperature. */
-const CUBIC: LocalLaw = { power: 3, bend: 0 };
+const LINE: HeatFunction = (T) => T;
+const CUBE: HeatFunction = (T) => T ** 3;
 
-/** How C of body and liquid bend about `at_K`, given the night's heat capacities as far as they are known. */
-export function heatShape(
-  contents: Contents,
-  T_K: Float64Array,
-  C: Float64Array,
-  at_K: number,
-): Pick<CellShape, "bodyPower" | "bodyBend" | "liquidPower" | "liquidBend"> {
-  const total = localLaw(T_K, C, at_K, contents.kind === "empty" ? { power: 1, bend: 0 } : CUBIC);
-  if (contents.kind === "empty" || contents.body === null) return both(total, total);
-  const { body } = contents;
-  const liquid = localLaw(
-    T_K,
-    C.map((value, i) => value - body(T_K[i]!)),
-    at_K,
-    CUBIC,
-  );
-  return both(lawOf(body, at_K), liquid);
+type HeatShape = Pick<CellShape, "bodyPower" | "bodyBend" | "liquidPower" | "liquidBend">;
+
+/**
+ * How the heat capacities of body and liquid bend about `at_K`.
+ * @param T_K, C the night's total heat capacities as far as they are known
+ */
+export function heatShape(contents: Contents, T_K: Float64Array, C: Float64Array, at_K: number): HeatShape {
+  if (contents.kind === "empty" || contents.body === null) return totalShape(contents, T_K, C, at_K);
+  const { body, shape } = contents;
+  const liquid = C.map((value, i) => value - body(T_K[i]!));
+  return both(lawOf(body, at_K), localLaw(T_K, liquid, at_K, shape ?? CUBE));
 }
 
 /** For a model of one body that holds all. */
-export function totalShape(
-  T_K: Float64Array,
-  C: Float64Array,
-  at_K: number,
-  otherwise: LocalLaw,
-): Pick<CellShape, "bodyPower" | "bodyBend" | "liquidPower" | "liquidBend"> {
-  const total = localLaw(T_K, C, at_K, otherwise);
+export function totalShape(contents: Contents, T_K: Float64Array, C: Float64Array, at_K: number): HeatShape {
+  const total = localLaw(T_K, C, at_K, contents.kind === "empty" ? LINE : (contents.shape ?? CUBE));
   return both(total, total);
 }
 

@@ -1,6 +1,6 @@
 import type { DriftStep, PulseSpan } from "./drift-step.js";
 import { medianOf } from "./order.js";
-import type { StageWindow } from "./transient-samples.js";
+import type { StageWindow } from "./stage-window.js";
 import type { Samples } from "./window.js";
 
 /** What drift lines with equal areas leave out, as far as they themselves can tell. All relative to C. */

@@ -1,5 +1,5 @@
 import { effectiveSampleSize } from "../numerics/autocorrelation.js";
-import { levenbergMarquardt } from "../numerics/levenberg-marquardt.js";
+import { levenbergMarquardt, type NonlinearFit } from "../numerics/levenberg-marquardt.js";
 import { medianOf } from "./order.js";
 import {
   type CellShape,
@@ -38,11 +38,8 @@ export interface ForwardPlan {
   readonly boundary_s: number;
   /** What the liquid may have been off its rest by at the first sample. */
   readonly u_lead_K: number;
-  /**
-   * Start of the heating on the samples' clock, between `from_s` and `to_s`: a body that overheats at once makes the
-   * misfit jump when an edge of the pulse crosses a sample, and no solver sees across that.
-   */
-  readonly shift: Prior & { readonly from_s: number; readonly to_s: number };
+  /** Start of the heating on the samples' clock. */
+  readonly shift: Prior;
   readonly lag: Prior;
   /** The stage is not logged: its slope is found with the rest. */
   readonly stageSlope: "logged" | "free";
@@ -97,11 +94,15 @@ interface Knob {
   readonly upper: number;
 }
 
-const BISQUARE = 4.685;
 const OUTSTANDING = 5;
-/** A step of a hundred thousandth of each scale is far below any uncertainty. */
-const SMALLEST_STEP = 1e-6;
+/** A last step of a part in 10⁵ of each scale leaves less than its square behind. */
+const SMALLEST_STEP = 1e-5;
 const DIFFERENCE = 1e-5;
+/**
+ * The difference of two levels in noise of a spectrum near 1/f scatters by this many times the floor to which block means
+ * sink: √2 for two of them, and a little for what the fit takes to itself.
+ */
+const LEVELS = 1.5;
 const SMALLEST_SHARE = 0.003;
 
 /**
@@ -112,7 +113,7 @@ export function fitForward(samples: TransientSamples, plan: ForwardPlan): Forwar
   const { time_s, temperature_K: T, count } = samples;
   const n = time_s.length;
   const knobs = knobsOf(plan, time_s);
-  const priors = priorsOf(plan, knobs);
+  let priors = priorsOf(plan, knobs);
   const transientPlan = (shift_s: number): TransientPlan => ({
     time_s,
     stage_K: plan.stageSlope === "logged" ? samples.stage_K : null,
@@ -128,8 +129,15 @@ export function fitForward(samples: TransientSamples, plan: ForwardPlan): Forwar
     return physical;
   };
 
+  draw(new Float64Array(knobs.length).fill(1));
+  if (!model.every(Number.isFinite)) return nowhere(plan, samples);
   const u = count.map((m) => samples.noise_K / Math.sqrt(m));
   const weight = new Float64Array(n).fill(1);
+  // The samples next to the heater's edges alone tell an early start from an overheating body. They misfit until both
+  // are right, and are not taken for spikes until then.
+  const edge = time_s.map((t) =>
+    Math.min(Math.abs(t), Math.abs(t - plan.heater.duration_s)) < 1.5 * plan.interval_s ? 1 : 0,
+  );
   let z: Float64Array = new Float64Array(knobs.length).fill(1);
   const residual = (trial: Float64Array, out: Float64Array): void => {
     const physical = draw(trial);
@@ -172,7 +180,7 @@ export function fitForward(samples: TransientSamples, plan: ForwardPlan): Forwar
   let fit = solve(60);
   let floor_K = 0;
   let spikes = 0;
-  for (let round = 0; round < 4; round++) {
+  for (let round = 0; round < 5; round++) {
     z = fit.value;
     draw(z);
     const left = T.map((value, i) => value - model[i]!);
@@ -181,32 +189,46 @@ export function fitForward(samples: TransientSamples, plan: ForwardPlan): Forwar
     let changed = false;
     spikes = 0;
     for (let i = 0; i < n; i++) {
-      const off = normalised[i]! / spread;
-      const w = off > OUTSTANDING ? 0 : off > BISQUARE ? 1 - (off / BISQUARE - 1) : 1;
+      const tolerated = edge[i] === 1 && round < 2;
+      const w = !tolerated && normalised[i]! > OUTSTANDING * spread && standsAlone(normalised, i) ? 0 : 1;
       if (w === 0) spikes++;
-      if (Math.abs(w - weight[i]!) > 0.01) changed = true;
+      if (w !== weight[i]) changed = true;
       weight[i] = w;
     }
     const next = floorOf(left, count, weight, samples.noise_K, knobs.length);
-    if (Math.abs(next - floor_K) > 0.1 * samples.noise_K * 0.1 + 0.05 * floor_K) changed = true;
+    if (Math.abs(next - floor_K) > 0.03 * samples.noise_K + 0.1 * floor_K) changed = true;
     floor_K = next;
     for (let i = 0; i < n; i++) u[i] = Math.hypot(samples.noise_K / Math.sqrt(count[i]!), floor_K);
-    if (!changed) break;
+    if (round === 1) {
+      // The edges have told the start. Should one of them now be found to be a spike, the start must not wander off.
+      const j = knobs.findIndex(({ name }) => name === "shift");
+      if (j >= 0) {
+        const { first, scale } = knobs[j]!;
+        const found = first + (z[j]! - 1) * scale;
+        const u_found = Math.max(scale * (fit.standardDeviation[j]! || 0), plan.interval_s / 500);
+        priors = priorsOf({ ...plan, shift: { value: found, u: Math.min(u_found, plan.shift.u) } }, knobs);
+      }
+    }
+    if (!changed && round >= 2) break;
+    if (!changed) continue;
     fit = solve(20);
   }
   const physical = draw(fit.value);
-  const score = T.reduce(
-    (sum, value, i) =>
-      sum + Math.min(OUTSTANDING ** 2, ((value - model[i]!) / samples.noise_K) ** 2 * count[i]!),
-    0,
-  );
+  const score = T.reduce((sum, value, i) => {
+    const squared = ((value - model[i]!) / samples.noise_K) ** 2 * count[i]!;
+    return sum + (edge[i] === 1 ? squared : Math.min(OUTSTANDING ** 2, squared));
+  }, 0);
   const normalised = T.map((value, i) => (weight[i] === 0 ? 0 : (value - model[i]!) / u[i]!));
   const independence = Math.min(1, effectiveSampleSize(normalised, weight) / (n - spikes));
   const inflation = 1 / Math.sqrt(independence);
+  // What is there for certain of noise that averaging does not reduce.
+  const left = T.map((value, i) => value - model[i]!);
+  const slow_K = floorOf(left, count, weight, samples.noise_K, knobs.length, 2);
   const index = (name: string): number => knobs.findIndex((knob) => knob.name === name);
   const uOf = (name: string): number => {
     const j = index(name);
-    return j < 0 ? 0 : knobs[j]!.scale * fit.standardDeviation[j]! * inflation;
+    if (j < 0) return 0;
+    return knobs[j]!.scale * Math.max(fit.standardDeviation[j]! * inflation, clusteredU(fit, j, normalised));
   };
   const { cell } = physical;
   const C = cell.body_J_per_K + cell.liquid_J_per_K;
@@ -222,7 +244,7 @@ export function fitForward(samples: TransientSamples, plan: ForwardPlan): Forwar
     C_J_per_K:
       law(cell.body_J_per_K, plan.shape.bodyPower, plan.shape.bodyBend) +
       law(cell.liquid_J_per_K, plan.shape.liquidPower, plan.shape.liquidBend),
-    u_C: uOf("C"),
+    u_C: Math.hypot(uOf("C"), (LEVELS * slow_K) / dT),
     link_W_per_K: cell.link_W_per_K * Math.exp(cell.shape.linkPower * x),
     u_link_W_per_K: uOf("link") * C,
     boundary_s: physical.boundary_s,
@@ -244,6 +266,67 @@ export function fitForward(samples: TransientSamples, plan: ForwardPlan): Forwar
     independence,
     converged: fit.converged,
   };
+}
+
+/** Neighbouring blocks that are taken to share their noise. */
+const CLUSTERS = 16;
+
+/**
+ * Standard uncertainty of a parameter from what neighbouring residuals together do to it: slow noise moves them all one
+ * way, which no count of blocks knows (cluster-robust covariance: Liang and Zeger, Biometrika 73, 13 (1986)).
+ * @param residual of the blocks, in units of their u
+ */
+function clusteredU(fit: NonlinearFit, parameter: number, residual: Float64Array): number {
+  const n = residual.length;
+  const p = fit.value.length;
+  const pull = new Float64Array(CLUSTERS);
+  for (let i = 0; i < n; i++) {
+    let gain = 0;
+    for (let k = 0; k < p; k++) {
+      const c = fit.covariance.get(parameter, k);
+      if (Number.isFinite(c)) gain += c * fit.jacobian.get(i, k);
+    }
+    pull[Math.floor((CLUSTERS * i) / n)]! += gain * residual[i]!;
+  }
+  const sum = pull.reduce((total, value) => total + value * value, 0);
+  return Math.sqrt((sum * CLUSTERS * n) / ((CLUSTERS - 1) * (n - p)));
+}
+
+/** A start from which the model runs out of any temperature: no fit, and every other one is better. */
+function nowhere(plan: ForwardPlan, { time_s, noise_K }: TransientSamples): ForwardFit {
+  const none = Number.POSITIVE_INFINITY;
+  return {
+    bodies: plan.bodies,
+    T_K: plan.reference_K,
+    T_before_K: plan.start_K,
+    C_J_per_K: plan.C_J_per_K,
+    u_C: none,
+    link_W_per_K: plan.link_per_s * plan.C_J_per_K,
+    u_link_W_per_K: none,
+    boundary_s: plan.boundary_s,
+    u_boundary_s: none,
+    boundary_W_per_K: Number.NaN,
+    shift_s: plan.shift.value,
+    u_shift_s: none,
+    lag_s: plan.lag.value,
+    u_lag_s: none,
+    drift_K_per_s: plan.drift_K_per_s,
+    curve_K: new Float64Array(time_s.length).fill(plan.start_K),
+    u_K: new Float64Array(time_s.length).fill(noise_K),
+    weight: new Float64Array(time_s.length).fill(1),
+    misfit: none,
+    spikes: 0,
+    score: none,
+    parameters: 0,
+    independence: 1,
+    converged: false,
+  };
+}
+
+/** A spike hits one sample; a run of them on one side is a misfit, and no reason to look away. */
+function standsAlone(magnitude: Float64Array, i: number): boolean {
+  const half = magnitude[i]! / 2;
+  return (magnitude[i - 1] ?? 0) < half && (magnitude[i + 1] ?? 0) < half;
 }
 
 function knobsOf(plan: ForwardPlan, time_s: Float64Array): Knob[] {
@@ -279,20 +362,35 @@ function knobsOf(plan: ForwardPlan, time_s: Float64Array): Knob[] {
     );
     if ("u" in plan.bodyShare) knobs.push(knob("share", plan.bodyShare.value, 1, SMALLEST_SHARE, 0.98));
   }
-  if (plan.shift.u > 0)
-    knobs.push(
-      knob(
-        "shift",
-        Math.min(plan.shift.to_s, Math.max(plan.shift.from_s, plan.shift.value)),
-        interval_s,
-        plan.shift.from_s,
-        plan.shift.to_s,
-      ),
-    );
+  if (plan.shift.u > 0) {
+    const [from_s, to_s] = shiftBounds(plan, time_s);
+    const { value, u } = plan.shift;
+    knobs.push(knob("shift", value, Math.min(interval_s, u), from_s, to_s));
+  }
   if (plan.lag.u > 0) knobs.push(knob("lag", plan.lag.value, interval_s, 0, 0.3 * span_s));
-  if (plan.linkPower.u > 0) knobs.push(knob("linkPower", plan.linkPower.value, 1, -4, 8));
+  if (plan.linkPower.u > 0)
+    knobs.push(
+      knob("linkPower", plan.linkPower.value, 1, plan.linkPower.value - 2, plan.linkPower.value + 2),
+    );
   if (plan.stageSlope === "free") knobs.push(knob("ramp", 0, rise_K / span_s ** 2));
   return knobs;
+}
+
+/**
+ * Not far, and not across a sample: where an edge of the pulse crosses one, the misfit of an overheating body jumps, and
+ * no solver finds back. A crossing within one standard uncertainty must be allowed.
+ */
+function shiftBounds(plan: ForwardPlan, time_s: Float64Array): [number, number] {
+  const { value, u } = plan.shift;
+  let from_s = value - 4 * u;
+  let to_s = value + 4 * u;
+  for (const t of time_s) {
+    for (const crossing of [t, t - plan.heater.duration_s]) {
+      if (crossing < value - u) from_s = Math.max(from_s, crossing);
+      if (crossing > value + u) to_s = Math.min(to_s, crossing);
+    }
+  }
+  return [from_s, to_s];
 }
 
 /** Everything the parameters stand for. */
@@ -415,6 +513,7 @@ function balanceBefore(physical: Physical, plan: TransientPlan, stage_K: number 
 /**
  * Scatter of block means that does not fall with the number of samples in a block: slow noise, or a misfit. Found so
  * that the normalised residuals have the variance they ought to; 0 where the white noise alone explains them.
+ * @param margin standard deviations of χ² that are left to chance
  */
 function floorOf(
   residual: Float64Array,
@@ -422,6 +521,7 @@ function floorOf(
   weight: Float64Array,
   noise_K: number,
   parameters: number,
+  margin = 0,
 ): number {
   const n = residual.length;
   let used = 0;
@@ -432,7 +532,8 @@ function floorOf(
       if (weight[i]! > 0)
         sum += (weight[i]! * residual[i]!) ** 2 / ((noise_K * noise_K) / count[i]! + floor * floor);
     }
-    return sum - Math.max(1, used - parameters);
+    const freedom = Math.max(1, used - parameters);
+    return sum - freedom - margin * Math.sqrt(2 * freedom);
   };
   if (excess(0) <= 0) return 0;
   let low = 0;

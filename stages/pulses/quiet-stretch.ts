@@ -1,6 +1,6 @@
 import { fitPolynomial } from "../numerics/polynomial.js";
+import { neighbourNoise_K } from "./noise.js";
 import { medianOf } from "./order.js";
-import { neighbourNoise_K } from "./transient-samples.js";
 import type { Samples } from "./window.js";
 
 /** A part of a window in which nothing happens but a drift; times as in the samples given. */

@@ -51,9 +51,9 @@ export interface TransientStart {
 }
 
 /**
- * What the thermometer reads at the planned times. Each step is the exact solution of the linear system with the
- * coefficients of its own midpoint, so a boundary time of a millisecond costs no more than one of a minute, and the
- * error is of third order in the change of the coefficients over a step.
+ * What the thermometer reads at the planned times. Each step is the exact solution of the system linearised where the
+ * step begins (exponential Rosenbrock–Euler method, of second order: Hochbruck and Ostermann, Acta Numerica 19, 209
+ * (2010)), so a boundary time of a millisecond costs no more than one of a minute, and constant coefficients no error.
  * (One body: Bachmann et al., Rev. Sci. Instrum. 43, 205 (1972); two: Shepherd, Rev. Sci. Instrum. 56, 273 (1985).)
  * @param out length n, K
  * @returns body and liquid at the last time
@@ -101,29 +101,13 @@ export function linkPotential_W(cell: TransientCell, T_K: number): number {
   return link_W_per_K * reference_K * (Math.abs(p) < 1e-9 ? x : Math.expm1(p * x) / p);
 }
 
-/** ∫G dT from liquid to body, for G = g·(T/T_ref)^p; Kapitza's law for p = 3. */
-function boundaryHeat_W(
-  { reference_K, boundary_W_per_K, shape }: TransientCell,
-  body_K: number,
-  liquid_K: number,
-) {
-  const p = shape.boundaryPower + 1;
-  // The two differ by little of themselves: their ratio's logarithm keeps the digits.
-  const ratio = Math.log1p((body_K - liquid_K) / liquid_K);
-  const atLiquid = boundary_W_per_K * reference_K * Math.exp(p * Math.log(liquid_K / reference_K));
-  return atLiquid * (Math.abs(p) < 1e-9 ? ratio : Math.expm1(p * ratio) / p);
-}
-
 class Stepper {
   body_K: number;
   liquid_K: number;
   sensor_K: number;
   readonly #cell: TransientCell;
-  /** Modes of the last advance: body change = Σ rate·(e^{μt} − 1)/μ. */
-  #slow = 0;
-  #fast = 0;
-  #slowRate = 0;
-  #fastRate = 0;
+  #stage_K = Number.NaN;
+  #stagePotential_W = 0;
 
   constructor(cell: TransientCell, start: TransientStart) {
     this.#cell = cell;
@@ -132,73 +116,93 @@ class Stepper {
     this.sensor_K = start.sensor_K;
   }
 
+  /** Over h from t, with the heater at one power and the stage at one temperature; NaN: no stage. */
   step(t: number, h: number, power_W: number, stage_K: number): void {
-    const { body_K, liquid_K } = this;
     const cell = this.#cell;
-    const link = linkPotential_W(cell, body_K) - (Number.isNaN(stage_K) ? 0 : linkPotential_W(cell, stage_K));
-    const heat = power_W + cell.leak_W + cell.leakRamp_W_per_s * (t + h / 2) - link;
-    this.#advance(h / 2, heat, body_K, liquid_K);
-    const middleBody = this.body_K;
-    const middleLiquid = this.liquid_K;
-    this.body_K = body_K;
-    this.liquid_K = liquid_K;
-    this.#advance(h, heat, middleBody, middleLiquid);
-    if (cell.lag_s > 0) this.#read(h, body_K);
-    else this.sensor_K = this.body_K;
-  }
-
-  /** Exact over `h` with the coefficients of the temperatures (atBody, atLiquid). */
-  #advance(h: number, heat_W: number, atBody: number, atLiquid: number): void {
-    const { reference_K, shape, link_W_per_K, boundary_W_per_K, body_J_per_K, liquid_J_per_K } = this.#cell;
-    const lnBody = Math.log(atBody / reference_K);
+    const { reference_K, shape, link_W_per_K, lag_s } = cell;
+    if (stage_K !== this.#stage_K && !Number.isNaN(stage_K)) {
+      this.#stage_K = stage_K;
+      this.#stagePotential_W = linkPotential_W(cell, stage_K);
+    }
+    const lnBody = Math.log(this.body_K / reference_K);
     const K = link_W_per_K * Math.exp(shape.linkPower * lnBody);
-    const Cb = body_J_per_K * Math.exp(lnBody * (shape.bodyPower + (shape.bodyBend * lnBody) / 2));
-    if (liquid_J_per_K === 0) {
-      this.#slow = -K / Cb;
-      this.#fast = 0;
-      this.#slowRate = heat_W / Cb;
-      this.#fastRate = 0;
-      this.body_K += h * phi1(this.#slow * h) * this.#slowRate;
+    const bodyPower = shape.bodyPower + shape.bodyBend * lnBody;
+    const Cb = cell.body_J_per_K * Math.exp(lnBody * (shape.bodyPower + (shape.bodyBend * lnBody) / 2));
+    const p = shape.linkPower + 1;
+    // ∫K dT from the reference: K·T is at hand, so no power need be taken again.
+    const potential =
+      Math.abs(p) < 1e-9
+        ? link_W_per_K * reference_K * lnBody
+        : (K * this.body_K - link_W_per_K * reference_K) / p;
+    const heat =
+      power_W + cell.leak_W + cell.leakRamp_W_per_s * (t + h / 2) - potential + this.#stagePotential_W;
+    const body_K = this.body_K;
+    if (cell.liquid_J_per_K === 0) {
+      const rate = heat / Cb;
+      const slow = -K / Cb - (rate * bodyPower) / body_K;
+      this.body_K += h * phi1(slow * h) * rate;
       this.liquid_K = this.body_K;
+      this.#read(h, body_K, lag_s, slow, rate, 0, 0);
       return;
     }
-    const lnLiquid = Math.log(atLiquid / reference_K);
-    const atBoundary = boundary_W_per_K * Math.exp(shape.boundaryPower * lnBody);
-    const G = boundary_W_per_K * Math.exp(shape.boundaryPower * lnLiquid);
-    const Cl = liquid_J_per_K * Math.exp(lnLiquid * (shape.liquidPower + (shape.liquidBend * lnLiquid) / 2));
-    // Rates of change now; the linear system acts on the change from here, so nothing large cancels.
-    const exchange = boundaryHeat_W(this.#cell, this.body_K, this.liquid_K);
-    const rateBody = (heat_W - exchange) / Cb;
+    const liquid_K = this.liquid_K;
+    const lnLiquid = Math.log(liquid_K / reference_K);
+    const liquidPower = shape.liquidPower + shape.liquidBend * lnLiquid;
+    const Cl =
+      cell.liquid_J_per_K * Math.exp(lnLiquid * (shape.liquidPower + (shape.liquidBend * lnLiquid) / 2));
+    const G = cell.boundary_W_per_K * Math.exp(shape.boundaryPower * lnLiquid);
+    const ratio = lnBody - lnLiquid;
+    const atBody = G * Math.exp(shape.boundaryPower * ratio);
+    const g = shape.boundaryPower + 1;
+    // ∫G dT from liquid to body; Kapitza's law for G ∝ T³.
+    const exchange = G * liquid_K * (Math.abs(g) < 1e-9 ? ratio : Math.expm1(g * ratio) / g);
+    const rateBody = (heat - exchange) / Cb;
     const rateLiquid = exchange / Cl;
-    const a = -(K + atBoundary) / Cb;
+    // The Jacobian: conductances, and heat capacities that change with their own temperature.
+    const openBody = -(K + atBody) / Cb;
+    const openLiquid = -G / Cl;
+    const bendBody = (-rateBody * bodyPower) / body_K;
+    const bendLiquid = (-rateLiquid * liquidPower) / liquid_K;
+    const a = openBody + bendBody;
+    const d = openLiquid + bendLiquid;
     const b = G / Cb;
-    const c = atBoundary / Cl;
-    const d = -G / Cl;
+    const c = atBody / Cl;
     const root = Math.sqrt((a - d) ** 2 + 4 * b * c);
     const fast = (a + d - root) / 2;
-    const slow = (K * G) / (Cb * Cl) / fast;
-    // Change over h = h·φ₁(Ah)·rate, φ₁(z) = (eᶻ − 1)/z, by Sylvester's formula on the two eigenvalues.
-    const f1 = phi1(slow * h);
-    const f2 = phi1(fast * h);
-    const alongBody = (a * rateBody + b * rateLiquid - fast * rateBody) / (slow - fast);
-    const alongLiquid = (c * rateBody + d * rateLiquid - fast * rateLiquid) / (slow - fast);
-    this.#slow = slow;
-    this.#fast = fast;
-    this.#slowRate = alongBody;
-    this.#fastRate = rateBody - alongBody;
-    this.body_K += h * (f1 * alongBody + f2 * (rateBody - alongBody));
-    this.liquid_K += h * (f1 * alongLiquid + f2 * (rateLiquid - alongLiquid));
+    // The determinant without the cancellation of openBody·openLiquid against b·c.
+    const slow =
+      ((K * G) / (Cb * Cl) + openBody * bendLiquid + openLiquid * bendBody + bendBody * bendLiquid) / fast;
+    // Change over h = h·φ₁(Jh)·rate, φ₁(z) = (eᶻ − 1)/z, by Sylvester's formula on the two eigenvalues.
+    const f1 = h * phi1(slow * h);
+    const f2 = h * phi1(fast * h);
+    const apart = slow - fast;
+    const alongBody = (a * rateBody + b * rateLiquid - fast * rateBody) / apart;
+    const alongLiquid = (c * rateBody + d * rateLiquid - fast * rateLiquid) / apart;
+    this.body_K += f1 * alongBody + f2 * (rateBody - alongBody);
+    this.liquid_K += f1 * alongLiquid + f2 * (rateLiquid - alongLiquid);
+    this.#read(h, body_K, lag_s, slow, alongBody, fast, rateBody - alongBody);
   }
 
-  /** The sensor follows the two modes of the body's last step; exact. */
-  #read(h: number, bodyBefore_K: number): void {
-    const { lag_s } = this.#cell;
+  /** The sensor follows the two modes of the body's last step: body change = Σ rate·(e^{μt} − 1)/μ. Exact. */
+  #read(
+    h: number,
+    body_K: number,
+    lag_s: number,
+    slow: number,
+    slowRate: number,
+    fast: number,
+    fastRate: number,
+  ): void {
+    if (lag_s === 0) {
+      this.sensor_K = this.body_K;
+      return;
+    }
     const decay = Math.exp(-h / lag_s);
     this.sensor_K =
-      bodyBefore_K +
-      (this.sensor_K - bodyBefore_K) * decay +
-      this.#slowRate * lagged(this.#slow, h, lag_s, decay) +
-      this.#fastRate * lagged(this.#fast, h, lag_s, decay);
+      body_K +
+      (this.sensor_K - body_K) * decay +
+      slowRate * lagged(slow, h, lag_s, decay) +
+      (fastRate === 0 ? 0 : fastRate * lagged(fast, h, lag_s, decay));
   }
 }
 

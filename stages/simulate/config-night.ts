@@ -32,6 +32,12 @@ const stage = z
       sign: "not-negative",
       example: "200 s",
     }).prefault("200 s"),
+    step_in_pulse: quantity("temperature", {
+      description:
+        "The set point steps by this in the middle of every pulse, up and down in turn; 0 for none.",
+      sign: "not-negative",
+      example: "1 mK",
+    }).prefault("0 K"),
     start: oneOf(
       ["balanced", "at-stage"],
       "Cell at the start: where leak and link balance, or at the first set point.",

@@ -95,6 +95,7 @@ export function scenarioOfNight(
       settings_K: settings_K(night.stage.settings),
       pulsesPerSetting: night.pulses.per_setting,
       stageTimeConstant_s: night.stage.time_constant.value,
+      stepInPulse_K: night.stage.step_in_pulse.value,
       settle_s: night.stage.settle.value,
       pulseLength_s: night.pulses.length.value,
       wait_s: night.pulses.wait.value,

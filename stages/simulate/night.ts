@@ -110,7 +110,14 @@ export function simulateNight(
       const pulse = planPulse(scenario, heat, before, now_s);
       pulses.push(pulse.driven);
       truth.push(pulse.truth);
-      runUntil(toMilliseconds(now_s + protocol.pulseLength_s), pulse.truth.Q_J / protocol.pulseLength_s);
+      const power_W = pulse.truth.Q_J / protocol.pulseLength_s;
+      const off_s = toMilliseconds(now_s + protocol.pulseLength_s);
+      if (protocol.stepInPulse_K > 0) {
+        runUntil(now_s + protocol.pulseLength_s / 2, power_W);
+        equations.drive.setting_K +=
+          pulses.length % 2 === 1 ? protocol.stepInPulse_K : -protocol.stepInPulse_K;
+      }
+      runUntil(off_s, power_W);
       runUntil(toMilliseconds(now_s + protocol.wait_s), 0);
     }
   }

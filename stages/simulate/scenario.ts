@@ -79,6 +79,8 @@ export interface Protocol {
   readonly pulsesPerSetting: number;
   /** Of the stage's approach to each set point. */
   readonly stageTimeConstant_s: number;
+  /** Of the set point, in the middle of each pulse, up and down in turn; 0 for none. */
+  readonly stepInPulse_K: number;
   /** Between a new set point and its first pulse. */
   readonly settle_s: number;
   readonly pulseLength_s: number;

@@ -33,6 +33,7 @@ export function aCell(): Scenario {
       settings_K: [0.5],
       pulsesPerSetting: 1,
       stageTimeConstant_s: 10,
+      stepInPulse_K: 0,
       settle_s: 20,
       pulseLength_s: 10,
       wait_s: 300,
