@@ -117,7 +117,7 @@ function quietened(t: Float64Array, T: Float64Array): Float64Array {
   return out;
 }
 
-/** Variance and running sum as white noise has them nine times in ten: a cut too many costs less than a bend unseen. */
+/** Variance and running sum as white noise has them all but once in forty: a cut too many costs less than a bend unseen. */
 function isNoise(residual: Float64Array, noise_K: number, degree: number): boolean {
   const n = residual.length;
   const freedom = n - degree - 1;
@@ -129,9 +129,9 @@ function isNoise(residual: Float64Array, noise_K: number, degree: number): boole
     sum += residual[i]!;
     furthest = Math.max(furthest, Math.abs(sum));
   }
-  // The running sum of a bridge of n steps reaches 1.22 σ√n once in ten times (Kolmogorov).
+  // The running sum of a bridge of n steps reaches 1.48 σ√n once in forty times (Kolmogorov).
   return (
-    squares < noise_K ** 2 * (freedom + 1.5 * Math.sqrt(2 * freedom)) &&
-    furthest < 1.22 * noise_K * Math.sqrt(n)
+    squares < noise_K ** 2 * (freedom + 2.5 * Math.sqrt(2 * freedom)) &&
+    furthest < 1.48 * noise_K * Math.sqrt(n)
   );
 }

@@ -78,11 +78,12 @@ export const KINDS = {
     thermometer: { slow_noise: { size: 3e-5, from: "2 s", to: "2000 s" } },
   },
   "thermometer 2 s late": { cell: HALF, night: STEPPED, thermometer: { lag: "2 s" } },
+  // The next pulse comes after four boundary times, while the liquid is still on its way.
   overlapping: {
     cell: SLOW,
     night: {
-      ...CLIMBING("0.4 K"),
-      pulses: { per_setting: 12, length: "10 s", rise: 0.03, wait: "45 s" },
+      ...CLIMBING("0.45 K"),
+      pulses: { per_setting: 12, length: "10 s", rise: 0.03, wait: "65 s" },
     },
   },
   "stage steps in mid-pulse": {
