@@ -1,6 +1,6 @@
 import { InputError } from "../errors.js";
 import { type CubicSpline, cubicSpline } from "../numerics/cubic-spline.js";
-import type { Calibration } from "./types.js";
+import type { ResistanceCurve } from "./types.js";
 
 /** A calibration's points as read. Every column has length n, rows in either order. */
 export interface CalibrationTable {
@@ -92,16 +92,11 @@ function turnsBackOn(spline: CubicSpline, knots: Float64Array): number {
 
 /**
  * Cubic spline of ln T against ln R through a table's points, not-a-knot at both ends.
- * @param u_temperature_K k = 1, common to all temperatures
  * @throws InputError for too few rows, values not above zero, equal resistances, and where the table or the spline
  * between two of its points is not monotonic
  * @see README.md
  */
-export function calibrationTable(
-  table: CalibrationTable,
-  scale: string,
-  u_temperature_K: number,
-): Calibration {
+export function calibrationTable(table: CalibrationTable): ResistanceCurve {
   checkRows(table);
   const order = rising(table);
   const { resistance_Ohm, temperature_K } = table;
@@ -126,10 +121,8 @@ export function calibrationTable(
   const cursor = spline.cursor();
   return {
     form: "table",
-    scale,
     resistanceRange_Ohm: [lowest, highest],
     temperatureRange_K: [Math.min(...ends), Math.max(...ends)],
-    u_temperature_K,
     temperature_K: (resistance) => Math.exp(cursor.value(Math.log(resistance))),
   };
 }

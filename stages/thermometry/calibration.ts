@@ -1,9 +1,9 @@
 import { Defect } from "../errors.js";
 import { type CalibrationTable, calibrationTable } from "./calibration-table.js";
 import { chebyshev } from "./chebyshev.js";
-import type { ThermometerConfig } from "./config.js";
+import type { CalibrationConfig, ThermometerConfig } from "./config.js";
 import { logPolynomial } from "./log-polynomial.js";
-import type { Calibration } from "./types.js";
+import type { Calibration, ResistanceCurve } from "./types.js";
 
 /**
  * A thermometer's calibration, whichever form it is configured in.
@@ -14,13 +14,22 @@ export function calibrationOf(
   { calibration, scale }: Pick<ThermometerConfig, "calibration" | "scale">,
   table: CalibrationTable | null,
 ): Calibration {
+  return {
+    ...curveOf(calibration, table),
+    scale,
+    u_temperature_K: calibration.standard_uncertainty.value,
+    u_slope: calibration.slope_standard_uncertainty.value,
+  };
+}
+
+function curveOf(calibration: CalibrationConfig, table: CalibrationTable | null): ResistanceCurve {
   switch (calibration.form) {
     case "table":
       if (table === null) throw new Defect("a table calibration without its table");
-      return calibrationTable(table, scale, calibration.standard_uncertainty.value);
+      return calibrationTable(table);
     case "log-polynomial":
-      return logPolynomial(calibration, scale);
+      return logPolynomial(calibration);
     case "chebyshev":
-      return chebyshev(calibration, scale);
+      return chebyshev(calibration);
   }
 }

@@ -1,7 +1,7 @@
 import { InputError } from "../errors.js";
 import type { ChebyshevConfig } from "./config.js";
 import { checkMonotonic } from "./monotonic.js";
-import type { Calibration } from "./types.js";
+import type { ResistanceCurve } from "./types.js";
 
 /** Σ aᵢ cos(i·arccos x) by C. W. Clenshaw's recurrence (Math. Tables Aids Comput. 9, 118 (1955)); a₀ counts in full. */
 function chebyshevSum(coefficients: Float64Array, x: number): number {
@@ -23,7 +23,7 @@ const ROUNDING = 1e-12;
  * @throws InputError if the resistance range reaches beyond Zl…Zu, and where the curve gives no temperature or is not
  * monotonic within its range
  */
-export function chebyshev(config: ChebyshevConfig, scale: string): Calibration {
+export function chebyshev(config: ChebyshevConfig): ResistanceCurve {
   const coefficients = Float64Array.from(config.coefficients);
   const [zLow, zHigh] = config.variable_range;
   const [low, high] = [config.resistance_range[0].value, config.resistance_range[1].value];
@@ -50,14 +50,12 @@ export function chebyshev(config: ChebyshevConfig, scale: string): Calibration {
       : Number.NaN;
   return {
     form: "chebyshev",
-    scale,
     resistanceRange_Ohm: [low, high],
     temperatureRange_K: checkMonotonic({
       key: "calibration.coefficients",
       lnRange: [Math.log(low), Math.log(high)],
       temperature_K: (resistance) => temperature_K(Math.min(Math.max(resistance, low), high)),
     }),
-    u_temperature_K: config.standard_uncertainty.value,
     temperature_K,
   };
 }

@@ -9,6 +9,14 @@ const standardUncertainty = quantity("temperature", {
   sign: "not-negative",
 });
 
+const slopeStandardUncertainty = quantity("dimensionless", {
+  description:
+    "Relative standard uncertainty of differences of temperature, common to all pulses: a slope dT/dR that is off. An error common to both ends of a pulse belongs in standard_uncertainty.",
+  example: "0.05 %",
+  sign: "not-negative",
+  atMost: 1,
+}).prefault("0");
+
 const coefficients = (description: string) =>
   z
     .array(z.number())
@@ -49,6 +57,7 @@ const table = z.strictObject({
   temperature: columnOf("temperature", "Column with the temperature."),
   resistance: columnOf("resistance", "Column with the resistance."),
   standard_uncertainty: standardUncertainty,
+  slope_standard_uncertainty: slopeStandardUncertainty,
   format: formatSchema,
 });
 
@@ -57,6 +66,7 @@ const logPolynomial = z.strictObject({
   coefficients: coefficients("a₀, a₁, … of ln T = Σ aᵢ (ln R)ⁱ, T in K, R in Ohm."),
   resistance_range: resistanceRange,
   standard_uncertainty: standardUncertainty,
+  slope_standard_uncertainty: slopeStandardUncertainty,
 });
 
 const chebyshev = z
@@ -88,6 +98,7 @@ const chebyshev = z
     quantity: z.enum(["T", "ln T", "log10 T"]).meta({ description: "What the series gives.", shown: ["T"] }),
     resistance_range: resistanceRange.optional(),
     standard_uncertainty: standardUncertainty,
+    slope_standard_uncertainty: slopeStandardUncertainty,
   })
   .transform((series) => ({
     ...series,

@@ -1,12 +1,12 @@
 import type { LogPolynomialConfig } from "./config.js";
 import { checkMonotonic } from "./monotonic.js";
-import type { Calibration } from "./types.js";
+import type { ResistanceCurve } from "./types.js";
 
 /**
  * ln T = Σ aᵢ (ln R)ⁱ, T in K and R in Ohm, by Horner's rule.
  * @throws InputError where the curve gives no temperature or is not monotonic within its range
  */
-export function logPolynomial(config: LogPolynomialConfig, scale: string): Calibration {
+export function logPolynomial(config: LogPolynomialConfig): ResistanceCurve {
   const coefficients = Float64Array.from(config.coefficients);
   const [low, high] = [config.resistance_range[0].value, config.resistance_range[1].value];
   const temperature_K = (resistance: number): number => {
@@ -19,14 +19,12 @@ export function logPolynomial(config: LogPolynomialConfig, scale: string): Calib
   const lnT = (resistance: number) => temperature_K(Math.min(Math.max(resistance, low), high));
   return {
     form: "log-polynomial",
-    scale,
     resistanceRange_Ohm: [low, high],
     temperatureRange_K: checkMonotonic({
       key: "calibration.coefficients",
       lnRange: [Math.log(low), Math.log(high)],
       temperature_K: lnT,
     }),
-    u_temperature_K: config.standard_uncertainty.value,
     temperature_K,
   };
 }

@@ -8,14 +8,23 @@ export interface TemperatureTrace {
 }
 
 /** A thermometer's own R → T, whichever form it was given in. */
-export interface Calibration {
+export interface ResistanceCurve {
   readonly form: "table" | "log-polynomial" | "chebyshev";
-  /** Name of the temperature scale; travels with the data. */
-  readonly scale: string;
   readonly resistanceRange_Ohm: readonly [number, number];
   readonly temperatureRange_K: readonly [number, number];
-  /** k = 1, taken as common to all temperatures. */
-  readonly u_temperature_K: number;
   /** @returns K; NaN outside the calibrated range, never an extrapolation. */
   temperature_K(resistance_Ohm: number): number;
+}
+
+/** The curve and all else that is known of the thermometer. */
+export interface Calibration extends ResistanceCurve {
+  /** Name of the temperature scale; travels with the data. */
+  readonly scale: string;
+  /** k = 1, taken as common to all temperatures. */
+  readonly u_temperature_K: number;
+  /**
+   * Relative standard uncertainty of a difference of two temperatures, common to all pulses: a heat capacity Q/ΔT
+   * changes by −u_slope of itself.
+   */
+  readonly u_slope: number;
 }

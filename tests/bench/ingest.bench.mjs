@@ -106,17 +106,14 @@ export const cases = {
   },
   "to temperature": async ({ file, bytes }) => {
     const night = await toNight(file);
-    const trace = toTemperature(night.thermometer, calibrationTable(curve(), "ITS-90", 1e-4));
+    const trace = toTemperature(night.thermometer, calibrationTable(curve()));
     return { rows: trace.time_s.length, bytes };
   },
   "temperature alone": async () => {
     const time_s = Float64Array.from({ length: ROWS }, (_, i) => i * 0.01);
     const random = noise();
     const resistance_Ohm = time_s.map((_, i) => 8000 - 7000 * (i / ROWS) + 0.3 * random());
-    toTemperature(
-      { time_s, resistance_Ohm, flag: new Uint8Array(ROWS) },
-      calibrationTable(curve(), "ITS-90", 1e-4),
-    );
+    toTemperature({ time_s, resistance_Ohm, flag: new Uint8Array(ROWS) }, calibrationTable(curve()));
     return { rows: ROWS };
   },
 };

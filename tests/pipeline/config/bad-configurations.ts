@@ -599,6 +599,26 @@ export const BAD_CONFIGURATIONS: readonly BadConfiguration[] = [
     ],
   },
   {
+    what: "a slope that is known to no better than itself",
+    file: THERMOMETER,
+    replace: "standard_uncertainty: 0.4 mK",
+    by: "standard_uncertainty: 0.4 mK\n  slope_standard_uncertainty: 5",
+    message: [
+      'thermometers/ge-31.yaml:9: calibration.slope_standard_uncertainty is "5"; expected a plain number, or one in %, at most 1.',
+      '  Way out: give a value such as "0.05 %"',
+    ],
+  },
+  {
+    what: "a slope in kelvin",
+    file: THERMOMETER,
+    replace: "standard_uncertainty: 0.4 mK",
+    by: "standard_uncertainty: 0.4 mK\n  slope_standard_uncertainty: 0.4 mK",
+    message: [
+      'thermometers/ge-31.yaml:9: calibration.slope_standard_uncertainty is "0.4 mK"; expected a plain number, or one in %.',
+      '  Way out: mK is the unit of a temperature; give a plain number, such as "0.5"',
+    ],
+  },
+  {
     what: "a number for a pattern",
     file: CAMPAIGN,
     replace: "runs: ../nights/fjord-7/*/run.yaml",

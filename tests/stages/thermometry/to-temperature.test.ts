@@ -10,6 +10,7 @@ const calibration: Calibration = {
   resistanceRange_Ohm: [10, 100],
   temperatureRange_K: [0.7, 7],
   u_temperature_K: 0,
+  u_slope: 0,
   temperature_K: (resistance) => (resistance >= 10 && resistance <= 100 ? 70 / resistance : Number.NaN),
 };
 
