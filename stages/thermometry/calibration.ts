@@ -11,7 +11,7 @@ import type { Calibration, ResistanceCurve } from "./types.js";
  * @throws InputError if the calibration is no monotonic curve of positive temperatures
  */
 export function calibrationOf(
-  { calibration, scale }: Pick<ThermometerConfig, "calibration" | "scale">,
+  { calibration, scale, lag }: Pick<ThermometerConfig, "calibration" | "scale" | "lag">,
   table: CalibrationTable | null,
 ): Calibration {
   return {
@@ -19,6 +19,8 @@ export function calibrationOf(
     scale,
     u_temperature_K: calibration.standard_uncertainty.value,
     u_slope: calibration.slope_standard_uncertainty.value,
+    lag_s: lag === "auto" ? null : lag.value,
+    u_lag_s: lag === "auto" ? 0 : lag.u,
   };
 }
 

@@ -1,6 +1,6 @@
 import { z } from "zod";
 import { formatSchema } from "../ingest/config.js";
-import { columnOf, name, quantity, text } from "../quantities/schema.js";
+import { columnOf, name, quantity, quantityOr, text } from "../quantities/schema.js";
 import type { Quantity } from "../quantities/types.js";
 
 const standardUncertainty = quantity("temperature", {
@@ -124,6 +124,11 @@ export const thermometerSchema = z.strictObject({
   calibration: z
     .discriminatedUnion("form", [table, logPolynomial, chebyshev])
     .meta({ description: "Resistance to temperature: a table, a log-polynomial or a chebyshev series." }),
+  lag: quantityOr("auto", "time", {
+    description: "Time by which the sensor follows the body; auto leaves it to be read from the trace.",
+    example: "2 ± 0.5 s",
+    sign: "not-negative",
+  }).prefault("auto"),
 });
 
 export type ThermometerConfig = z.output<typeof thermometerSchema>;

@@ -27,4 +27,8 @@ export interface Calibration extends ResistanceCurve {
    * changes by −u_slope of itself.
    */
   readonly u_slope: number;
+  /** Time by which the sensor follows the body; null where it is left to be read from the trace. */
+  readonly lag_s: number | null;
+  /** k = 1; 0 where `lag_s` is null. */
+  readonly u_lag_s: number;
 }

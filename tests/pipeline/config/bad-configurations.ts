@@ -619,6 +619,26 @@ export const BAD_CONFIGURATIONS: readonly BadConfiguration[] = [
     ],
   },
   {
+    what: "a thermometer ahead of its body",
+    file: THERMOMETER,
+    replace: "scale: ITS-90",
+    by: "scale: ITS-90\nlag: -2 s",
+    message: [
+      'thermometers/ge-31.yaml:3: lag is "-2 s"; expected auto, or a duration in s, ms, us or min, not below 0.',
+      '  Way out: give a value such as "2 ± 0.5 s"',
+    ],
+  },
+  {
+    what: "a lag without its unit",
+    file: THERMOMETER,
+    replace: "scale: ITS-90",
+    by: "scale: ITS-90\nlag: 2",
+    message: [
+      'thermometers/ge-31.yaml:3: lag is "2"; expected auto, or a duration in s, ms, us or min.',
+      '  Way out: add the unit, such as "2 s"',
+    ],
+  },
+  {
     what: "a number for a pattern",
     file: CAMPAIGN,
     replace: "runs: ../nights/fjord-7/*/run.yaml",

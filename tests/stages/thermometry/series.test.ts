@@ -74,15 +74,15 @@ test("ln T and log10 T, ln R and log10 R say the same in other numbers", () => {
 });
 
 test("beyond its range a series gives no temperature", () => {
-  const calibration = calibrationOf({ calibration: series({}), scale: "ITS-90" }, null);
+  const calibration = calibrationOf({ calibration: series({}), scale: "ITS-90", lag: "auto" }, null);
   expect(calibration.temperature_K(99.9)).toBeNaN();
   expect(calibration.temperature_K(100_001)).toBeNaN();
 });
 
 test("scale and uncertainties go with a calibration of any form", () => {
-  const known = { scale: "PLTS-2000", u_temperature_K: 2e-4, u_slope: 5e-4 };
+  const known = { scale: "PLTS-2000", u_temperature_K: 2e-4, u_slope: 5e-4, lag_s: null, u_lag_s: 0 };
   for (const calibration of [series({}), polynomial([6, -0.75])]) {
-    expect(calibrationOf({ calibration, scale: "PLTS-2000" }, null)).toMatchObject(known);
+    expect(calibrationOf({ calibration, scale: "PLTS-2000", lag: "auto" }, null)).toMatchObject(known);
   }
   const rows = Float64Array.of(10, 20, 40, 80);
   const table = { file: "t.csv", line: new Int32Array(4), resistance_Ohm: rows, temperature_K: rows };
@@ -99,6 +99,8 @@ test("scale and uncertainties go with a calibration of any form", () => {
     },
   });
   expect(calibrationOf(config, table)).toMatchObject({ ...known, form: "table" });
+  const late = { ...config, lag: { value: 2, u: 0.5, text: "2 ± 0.5 s" } };
+  expect(calibrationOf(late, table)).toMatchObject({ lag_s: 2, u_lag_s: 0.5 });
 });
 
 test.each([

@@ -11,6 +11,8 @@ const calibration: Calibration = {
   temperatureRange_K: [0.7, 7],
   u_temperature_K: 0,
   u_slope: 0,
+  lag_s: null,
+  u_lag_s: 0,
   temperature_K: (resistance) => (resistance >= 10 && resistance <= 100 ? 70 / resistance : Number.NaN),
 };
 
