@@ -43,7 +43,19 @@ export interface Unit {
   readonly factor: number;
 }
 
-const PREFIX = { "": 1, n: 1e-9, u: 1e-6, µ: 1e-6, μ: 1e-6, m: 1e-3, h: 1e2, k: 1e3, M: 1e6 } as const;
+const PREFIX = {
+  "": 1,
+  f: 1e-15,
+  p: 1e-12,
+  n: 1e-9,
+  u: 1e-6,
+  µ: 1e-6,
+  μ: 1e-6,
+  m: 1e-3,
+  h: 1e2,
+  k: 1e3,
+  M: 1e6,
+} as const;
 /** Micro sign (U+00B5), Greek mu (U+03BC) and the typewriter's u. */
 const MICRO = ["u", "µ", "μ"] as const;
 
@@ -68,9 +80,10 @@ addPrefixed("time", ["s"], ["", "m", ...MICRO]);
 add("time", { min: 60, h: 3600, d: 86400 });
 // Greek capital omega (U+03A9) and the ohm sign (U+2126) look alike and both occur in files.
 addPrefixed("resistance", ["Ohm", "\u03a9", "\u2126"], ["", "m", "k", "M"]);
-addPrefixed("current", ["A"], ["", "m", ...MICRO, "n"]);
+addPrefixed("current", ["A"], ["", "m", ...MICRO, "n", "p"]);
 addPrefixed("voltage", ["V"], ["", "m", ...MICRO, "n"]);
-addPrefixed("power", ["W"], ["", "m", ...MICRO, "n"]);
+// What excites a thermometer is a few nA and below, and heats it by fW to pW.
+addPrefixed("power", ["W"], ["", "m", ...MICRO, "n", "p", "f"]);
 addPrefixed("energy", ["J"], ["", "m", ...MICRO, "n"]);
 addPrefixed("pressure", ["Pa"], ["", "h", "k", "M"]);
 // atm and Torr: 101325 Pa and 101325/760 Pa exactly; mmHg: 133.322387415 Pa, conventional
