@@ -3,6 +3,7 @@ import { type CalibrationTable, calibrationTable } from "./calibration-table.js"
 import { chebyshev } from "./chebyshev.js";
 import type { CalibrationConfig, ThermometerConfig } from "./config.js";
 import { logPolynomial } from "./log-polynomial.js";
+import { selfHeatingOf } from "./self-heating.js";
 import type { Calibration, ResistanceCurve } from "./types.js";
 
 /**
@@ -11,9 +12,10 @@ import type { Calibration, ResistanceCurve } from "./types.js";
  * @throws InputError if the calibration is no monotonic curve of positive temperatures
  */
 export function calibrationOf(
-  { calibration, scale, lag }: Pick<ThermometerConfig, "calibration" | "scale" | "lag">,
+  config: Pick<ThermometerConfig, "calibration" | "scale" | "lag" | "self_heating">,
   table: CalibrationTable | null,
 ): Calibration {
+  const { calibration, scale, lag, self_heating } = config;
   return {
     ...curveOf(calibration, table),
     scale,
@@ -21,6 +23,7 @@ export function calibrationOf(
     u_slope: calibration.slope_standard_uncertainty.value,
     lag_s: lag === "auto" ? null : lag.value,
     u_lag_s: lag === "auto" ? 0 : lag.u,
+    selfHeating: self_heating === undefined ? null : selfHeatingOf(self_heating),
   };
 }
 

@@ -114,6 +114,61 @@ function wholeRange(variable: "ln R" | "log10 R", range: readonly [number, numbe
   return [end(range[0]), end(range[1])];
 }
 
+const selfHeating = z
+  .strictObject({
+    current: quantity("current", {
+      description: "Current through the sensor, P = I²R; or give voltage or power.",
+      example: "1 ± 0.01 nA",
+      sign: "positive",
+    }).optional(),
+    voltage: quantity("voltage", {
+      description: "Voltage across the sensor, P = V²/R; or give current or power.",
+      example: "50 µV",
+      sign: "positive",
+    }).optional(),
+    power: quantity("power", {
+      description: "Power into the sensor, where a bridge keeps it constant; or give current or voltage.",
+      example: "1 fW",
+      sign: "positive",
+    }).optional(),
+    thermal_resistance: quantity("thermal resistance", {
+      description: "Thermal resistance R_th between sensor and cell at the temperature `at`.",
+      example: "2e5 ± 1e4 K/W",
+      sign: "positive",
+    }),
+    at: quantity("temperature", {
+      description: "Temperature at which the thermal resistance holds.",
+      example: "0.5 K",
+      sign: "positive",
+    }),
+    power_law: z.number().min(-6).max(6).default(-3).meta({
+      description:
+        "p in R_th ∝ T^p: −3 for a boundary between solids, about −1 for a contact through metal (common practice).",
+    }),
+  })
+  .check((context) => {
+    const { current, voltage, power } = context.value;
+    const given = Object.entries({ current, voltage, power }).filter(([, value]) => value !== undefined);
+    if (given.length === 1) return;
+    context.issues.push({
+      code: "custom",
+      input: context.value,
+      path: given.length === 0 ? [] : [given[1]![0]],
+      message: "one of current, voltage and power",
+      params: {
+        expected: "one of current, voltage and power",
+        wayOut:
+          given.length === 0
+            ? 'add current: "1 nA", or voltage: or power:, whichever the bridge keeps constant'
+            : "keep the one that the bridge keeps constant",
+      },
+    });
+  })
+  .meta({
+    description:
+      "Warmth of the sensor above the cell by its own excitation, P·R_th; left out: none taken off.",
+  });
+
 export const thermometerSchema = z.strictObject({
   version: z.literal(1).default(1).meta({ description: "Version of this file's form." }),
   thermometer: name({ description: "Name of the thermometer.", example: "ge-31" }),
@@ -129,9 +184,11 @@ export const thermometerSchema = z.strictObject({
     example: "2 ± 0.5 s",
     sign: "not-negative",
   }).prefault("auto"),
+  self_heating: selfHeating.optional(),
 });
 
 export type ThermometerConfig = z.output<typeof thermometerSchema>;
+export type SelfHeatingConfig = NonNullable<ThermometerConfig["self_heating"]>;
 export type CalibrationConfig = ThermometerConfig["calibration"];
 export type TableCalibrationConfig = Extract<CalibrationConfig, { form: "table" }>;
 export type LogPolynomialConfig = Extract<CalibrationConfig, { form: "log-polynomial" }>;

@@ -16,6 +16,17 @@ export interface ResistanceCurve {
   temperature_K(resistance_Ohm: number): number;
 }
 
+/** The sensor's own warmth above the body it measures: T_sensor = T_body + P·R_th(T_body). */
+export interface SelfHeating {
+  /** What the reading puts into the sensor. */
+  power_W(resistance_Ohm: number): number;
+  /** R_th, a power law of the body's temperature. */
+  resistance_K_per_W(temperature_K: number): number;
+  readonly powerLaw: number;
+  /** Relative standard uncertainty of P·R_th, common to all samples. */
+  readonly u_relative: number;
+}
+
 /** The curve and all else that is known of the thermometer. */
 export interface Calibration extends ResistanceCurve {
   /** Name of the temperature scale; travels with the data. */
@@ -31,4 +42,6 @@ export interface Calibration extends ResistanceCurve {
   readonly lag_s: number | null;
   /** k = 1; 0 where `lag_s` is null. */
   readonly u_lag_s: number;
+  /** Taken off in toTemperature; `temperature_K` above is the sensor's own. null: none. */
+  readonly selfHeating: SelfHeating | null;
 }

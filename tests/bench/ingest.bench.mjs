@@ -4,7 +4,18 @@ import { join } from "node:path";
 import { readLogFile } from "../../dist/stages/ingest/columns.js";
 import { assembleNight } from "../../dist/stages/ingest/night.js";
 import { calibrationTable } from "../../dist/stages/thermometry/calibration-table.js";
+import { selfHeatingOf } from "../../dist/stages/thermometry/self-heating.js";
 import { toTemperature } from "../../dist/stages/thermometry/to-temperature.js";
+
+const germanium = () => ({ ...calibrationTable(curve()), selfHeating: null });
+
+/** A nA through kOhm, on a mount of 2e9 K/W at 0.5 K: some 10⁻⁴ of T and below. */
+const WARM = {
+  current: { value: 1e-9, u: 0 },
+  thermal_resistance: { value: 2e9, u: 0 },
+  at: { value: 0.5, u: 0 },
+  power_law: -3,
+};
 
 export const title = "4 million rows of t, R, Tstage to columns and temperature";
 export const repeats = 5;
@@ -106,14 +117,18 @@ export const cases = {
   },
   "to temperature": async ({ file, bytes }) => {
     const night = await toNight(file);
-    const trace = toTemperature(night.thermometer, calibrationTable(curve()));
+    const trace = toTemperature(night.thermometer, germanium());
     return { rows: trace.time_s.length, bytes };
   },
-  "temperature alone": async () => {
-    const time_s = Float64Array.from({ length: ROWS }, (_, i) => i * 0.01);
-    const random = noise();
-    const resistance_Ohm = time_s.map((_, i) => 8000 - 7000 * (i / ROWS) + 0.3 * random());
-    toTemperature({ time_s, resistance_Ohm, flag: new Uint8Array(ROWS) }, calibrationTable(curve()));
-    return { rows: ROWS };
-  },
+  "temperature alone": async () => temperatureAlone(germanium()),
+  "temperature alone, self-heating taken off": async () =>
+    temperatureAlone({ ...germanium(), selfHeating: selfHeatingOf(WARM) }),
 };
+
+function temperatureAlone(calibration) {
+  const time_s = Float64Array.from({ length: ROWS }, (_, i) => i * 0.01);
+  const random = noise();
+  const resistance_Ohm = time_s.map((_, i) => 8000 - 7000 * (i / ROWS) + 0.3 * random());
+  toTemperature({ time_s, resistance_Ohm, flag: new Uint8Array(ROWS) }, calibration);
+  return { rows: ROWS };
+}

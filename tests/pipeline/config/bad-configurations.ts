@@ -639,6 +639,66 @@ export const BAD_CONFIGURATIONS: readonly BadConfiguration[] = [
     ],
   },
   {
+    what: "self-heating without its excitation",
+    file: THERMOMETER,
+    replace: "scale: ITS-90",
+    by: "scale: ITS-90\nself_heating: { thermal_resistance: 2e5 K/W, at: 0.5 K }",
+    message: [
+      'thermometers/ge-31.yaml:3: self_heating is "{ thermal_resistance: 2e5 K/W, at: 0.5 K }"; expected one of current, voltage and power.',
+      '  Way out: add current: "1 nA", or voltage: or power:, whichever the bridge keeps constant',
+    ],
+  },
+  {
+    what: "self-heating by a current and a voltage",
+    file: THERMOMETER,
+    replace: "scale: ITS-90",
+    by: "scale: ITS-90\nself_heating: { current: 1 nA, voltage: 50 µV, thermal_resistance: 2e5 K/W, at: 0.5 K }",
+    message: [
+      'thermometers/ge-31.yaml:3: self_heating.voltage is "50 µV"; expected one of current, voltage and power.',
+      "  Way out: keep the one that the bridge keeps constant",
+    ],
+  },
+  {
+    what: "a thermal resistance without its temperature",
+    file: THERMOMETER,
+    replace: "scale: ITS-90",
+    by: "scale: ITS-90\nself_heating: { current: 1 nA, thermal_resistance: 2e5 K/W }",
+    message: [
+      "thermometers/ge-31.yaml:3: self_heating.at is missing; expected a temperature in K, mK or uK.",
+      '  Way out: give a temperature, such as "0.5 K"',
+    ],
+  },
+  {
+    what: "a conductance for a resistance",
+    file: THERMOMETER,
+    replace: "scale: ITS-90",
+    by: "scale: ITS-90\nself_heating: { current: 1 nA, thermal_resistance: 5e-6 W/K, at: 0.5 K }",
+    message: [
+      'thermometers/ge-31.yaml:3: self_heating.thermal_resistance is "5e-6 W/K"; expected a thermal resistance in K/W, mK/W, kK/W or MK/W.',
+      '  Way out: W/K is the unit of a thermal conductance; give a thermal resistance, such as "50 K/W"',
+    ],
+  },
+  {
+    what: "a power law out of all bounds",
+    file: THERMOMETER,
+    replace: "scale: ITS-90",
+    by: "scale: ITS-90\nself_heating: { power: 1 fW, thermal_resistance: 2e5 K/W, at: 0.5 K, power_law: 30 }",
+    message: [
+      'thermometers/ge-31.yaml:3: self_heating.power_law is "30"; expected a number from -6 to 6.',
+      "  Way out: write power_law: -3",
+    ],
+  },
+  {
+    what: "a misspelt key of the self-heating",
+    file: THERMOMETER,
+    replace: "scale: ITS-90",
+    by: "scale: ITS-90\nself_heating: { curent: 1 nA, thermal_resistance: 2e5 K/W, at: 0.5 K }",
+    message: [
+      'thermometers/ge-31.yaml:3: self_heating.curent is "1 nA"; expected one of the keys current, voltage, power, thermal_resistance, at, power_law.',
+      "  Way out: did you mean current?. Then see to self_heating",
+    ],
+  },
+  {
     what: "a number for a pattern",
     file: CAMPAIGN,
     replace: "runs: ../nights/fjord-7/*/run.yaml",

@@ -80,7 +80,14 @@ test("beyond its range a series gives no temperature", () => {
 });
 
 test("scale and uncertainties go with a calibration of any form", () => {
-  const known = { scale: "PLTS-2000", u_temperature_K: 2e-4, u_slope: 5e-4, lag_s: null, u_lag_s: 0 };
+  const known = {
+    scale: "PLTS-2000",
+    u_temperature_K: 2e-4,
+    u_slope: 5e-4,
+    lag_s: null,
+    u_lag_s: 0,
+    selfHeating: null,
+  };
   for (const calibration of [series({}), polynomial([6, -0.75])]) {
     expect(calibrationOf({ calibration, scale: "PLTS-2000", lag: "auto" }, null)).toMatchObject(known);
   }

@@ -13,6 +13,7 @@ const calibration: Calibration = {
   u_slope: 0,
   lag_s: null,
   u_lag_s: 0,
+  selfHeating: null,
   temperature_K: (resistance) => (resistance >= 10 && resistance <= 100 ? 70 / resistance : Number.NaN),
 };
 
