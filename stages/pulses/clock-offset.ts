@@ -1,19 +1,27 @@
 import { median } from "simple-statistics";
-import { fitPolynomial } from "../numerics/polynomial.js";
 import type { TemperatureTrace } from "../thermometry/types.js";
+import { type GridMoments, gridMoments } from "./grid-moments.js";
 import type { HeaterPulses } from "./heater-pulses.js";
-import { medianOf } from "./order.js";
-import { type Samples, sampleRange, samplingInterval_s, usableSamples } from "./window.js";
+import { type Onset, onsetOf, REACH_S, type Surroundings, surroundings } from "./onset.js";
+import { samplingInterval_s } from "./window.js";
 
-/** How far the heater's clock is from the thermometer's. */
+/** How far the heater's clock is from the thermometer's: offset + rate·(time − reference), time on the heater's. */
 export interface ClockOffset {
-  /** Added to heater times. 0 where `applied` is false. */
+  /** Added to heater times. 0 where it is not significant. */
   readonly offset_s: number;
   /** As estimated, applied or not; NaN where no pulse told. */
   readonly estimate_s: number;
   readonly u_s: number;
+  /** By which the offset grows, s per s. 0 where it is not significant or not known. */
+  readonly rate: number;
+  /** As estimated, applied or not; NaN where too few pulses told, or too short a part of the night. */
+  readonly rate_estimate: number;
+  readonly u_rate: number;
+  /** Heater time at which the offset is `offset_s`. */
+  readonly reference_s: number;
   /** Pulses it was read from. */
   readonly pulses: number;
+  /** Whether heater times are moved at all. */
   readonly applied: boolean;
 }
 
@@ -21,144 +29,218 @@ export const NO_OFFSET: ClockOffset = {
   offset_s: 0,
   estimate_s: Number.NaN,
   u_s: Number.NaN,
+  rate: 0,
+  rate_estimate: Number.NaN,
+  u_rate: Number.NaN,
+  reference_s: 0,
   pulses: 0,
   applied: false,
 };
 
-/** The clearest pulses tell the offset; more of them only cost time. */
-const CLEAREST = 24;
-/** Clocks of one bench are never further apart than this; beyond it a neighbouring event would be taken for the pulse. */
-const REACH_S = 10;
+/** So many pulses tell the offset; more of them only cost time. */
+const ENOUGH = 16;
+const FEWEST = 3;
+/** A line needs more: with these, one that is far off does not turn it. */
+const FEWEST_FOR_RATE = 8;
+/** Part of the heater's night that they must span. */
+const SPAN_FOR_RATE = 0.6;
+/**
+ * What a fit of one exponential leaves of cells that answer to a pulse as heat and conductance change with temperature,
+ * a part of the pulse's length (measured on simulated nights).
+ */
+const MODEL = 2e-3;
+/** Where the trace bends and nobody said whether the thermometer lags, the bend may be two: a part of the length, or s. */
+const TWO_BENDS = 1e-2;
+const TWO_BENDS_S = 0.1;
 const SIGNIFICANT = 4;
+/** Log-likelihood by which a clock is ruled out: a normal variable four standard deviations off. */
+const RULED_OUT = 8;
+/** Pulses whose onset is something else: a door, a spike, a step of the stage. */
+const ASTRAY = 0.02;
+
+interface Seen {
+  readonly onset: Onset;
+  /** Heater time from the reference. */
+  readonly time_s: number;
+  /** The heater's own start lies anywhere within ± this. */
+  readonly within_s: number;
+}
 
 /**
- * Offset of the heater's clock from the corners that each pulse makes in the thermometer's trace: the one where the
- * heater starts. It is applied only where it is SIGNIFICANT standard uncertainties from zero, since a correction
- * that is noise moves every pulse of the night together.
+ * Offset and rate of the heater's clock from the onsets that the thermometer sees, each applied only where the
+ * trace rules out that it is zero: a correction that is noise moves every pulse of the night together.
+ * @param lag_s by which the thermometer is known to follow the body; null where nobody knows
  */
-export function clockOffset(trace: TemperatureTrace, heater: HeaterPulses): ClockOffset {
+export function clockOffset(
+  trace: TemperatureTrace,
+  heater: HeaterPulses,
+  lag_s: number | null = null,
+): ClockOffset {
   const interval_s = samplingInterval_s(trace.time_s);
-  const order = [...heater.pulse.keys()]
-    .filter((i) => heater.flag[i] === 0)
-    .sort((a, b) => heater.Q_J[b]! - heater.Q_J[a]!);
-  // Not the strongest in energy alone: they crowd at one end of the night.
-  const stride = Math.max(1, Math.floor(order.length / CLEAREST));
-  const chosen = order.filter((_, rank) => rank % stride === 0).slice(0, CLEAREST);
-  const onsets = chosen.map((i) => onset_s(trace, heater, i, interval_s)).filter((value) => value !== null);
-  if (onsets.length < 3) return NO_OFFSET;
-  const estimate_s = median(onsets);
-  const scatter = 1.4826 * median(onsets.map((value) => Math.abs(value - estimate_s)));
-  // 1.2533 is what a median of normal values loses against their mean. Between two samples nothing is seen, and
-  // pulses in step with the samples do not average that away.
-  const u_s = Math.hypot((1.2533 * scatter) / Math.sqrt(onsets.length), interval_s / Math.sqrt(12));
-  const applied = Math.abs(estimate_s) > SIGNIFICANT * u_s;
-  return { offset_s: applied ? estimate_s : 0, estimate_s, u_s, pulses: onsets.length, applied };
+  const found = clearest(heater)
+    .map((i) => ({ i, about: surroundings(trace, heater, i, interval_s) }))
+    .filter((each): each is { i: number; about: Surroundings } => each.about !== null);
+  if (found.length < FEWEST) return NO_OFFSET;
+  const times = found.map(({ i }) => heater.start_s[i]!);
+  const span_s = Math.max(...times) - Math.min(...times);
+  const reference_s = times.reduce((sum, t) => sum + t, 0) / times.length;
+  const seen = found.map(({ i, about }) => ({
+    onset: onsetOf(about, lag_s ?? 0),
+    time_s: heater.start_s[i]! - reference_s,
+    within_s: heater.start_within_s[i]!,
+  }));
+  const model_s = modelError_s(seen, median(found.map(({ about }) => about.duration_s)), lag_s);
+  // An error that grows evenly from one end of the night to the other; its standard deviation is model_s.
+  const modelRate = (model_s * Math.sqrt(12)) / span_s;
+
+  const heaterSpan_s = heater.start_s[heater.start_s.length - 1]! - heater.start_s[0]!;
+  const tellsRate = seen.length >= FEWEST_FOR_RATE && span_s >= SPAN_FOR_RATE * heaterSpan_s;
+  const level = levelOf(seen);
+  const line = tellsRate ? lineOf(seen) : null;
+  const rated =
+    line !== null &&
+    Math.abs(line.rate.value) > SIGNIFICANT * modelRate &&
+    rulesOut(seen, [line.offset.value, line.rate.value], [level.value, 0]);
+  const offset = rated ? line.offset : level;
+  const rate = rated ? line.rate.value : 0;
+  const moved =
+    Math.abs(offset.value) > SIGNIFICANT * model_s && rulesOut(seen, [offset.value, rate], [0, rate]);
+  return {
+    offset_s: moved ? offset.value : 0,
+    estimate_s: offset.value,
+    u_s: Math.hypot(offset.u, model_s),
+    rate,
+    rate_estimate: line === null ? Number.NaN : line.rate.value,
+    u_rate: line === null ? Number.NaN : Math.hypot(line.rate.u, modelRate),
+    reference_s,
+    pulses: seen.length,
+    applied: moved || rated,
+  };
+}
+
+function modelError_s(seen: readonly Seen[], duration_s: number, lag_s: number | null): number {
+  const bends = seen.filter(({ onset }) => onset.bends).length >= seen.length / 2;
+  return lag_s === null && bends ? Math.min(TWO_BENDS * duration_s, TWO_BENDS_S) : MODEL * duration_s;
+}
+
+/** A bend is fitted to each pulse at each start, and follows its noise: half a unit each is no word of the clock's. */
+const ruledOut = (seen: readonly Seen[]): number => RULED_OUT + seen.length / 2;
+
+/** Offset at the reference, and rate. */
+type Clock = readonly [offset_s: number, rate: number];
+
+/**
+ * Whether `found` is so much likelier than `other` that nobody would take the one for the other, and not on the word
+ * of one pulse alone: the one that says so loudest is not heard.
+ */
+function rulesOut(seen: readonly Seen[], found: Clock, other: Clock): boolean {
+  const word = (each: Seen): number =>
+    logLikelihood(each, "bent_per_s", found) - logLikelihood(each, "bent_per_s", other);
+  const words = seen.map(word);
+  return words.reduce((sum, value) => sum + value, 0) - Math.max(...words) > ruledOut(seen);
+}
+
+interface Estimate {
+  readonly value: number;
+  readonly u: number;
 }
 
 /** The heater pulses, moved to the thermometer's clock. */
-export function onThermometerClock(heater: HeaterPulses, offset_s: number): HeaterPulses {
-  return offset_s === 0 ? heater : { ...heater, start_s: heater.start_s.map((t) => t + offset_s) };
-}
-
-/** Start of the rise less the heater's own start; null where the pulse does not stand out. */
-function onset_s(
-  trace: TemperatureTrace,
+export function onThermometerClock(
   heater: HeaterPulses,
-  i: number,
-  interval_s: number,
-): number | null {
-  const start = heater.start_s[i]!;
-  const duration = heater.duration_s[i]!;
-  const previousEnd = i === 0 ? Number.NEGATIVE_INFINITY : heater.start_s[i - 1]! + heater.duration_s[i - 1]!;
-  const next = heater.start_s[i + 1] ?? Number.POSITIVE_INFINITY;
-  const reach = Math.min(REACH_S, 0.4 * (next - start - duration), 0.4 * (start - previousEnd));
-  if (!(reach > 3 * interval_s)) return null;
-  const all = usableSamples(
-    trace,
-    sampleRange(trace.time_s, start - 2 * reach, start + duration + 2 * reach),
-    start,
-  );
-  if (all.time_s.length < 30) return null;
-  const coarse = steepestRise(all, duration, reach, interval_s);
-  if (coarse === null) return null;
-  return corner(all, coarse, duration, interval_s);
+  clock: Pick<ClockOffset, "offset_s" | "rate" | "reference_s">,
+): HeaterPulses {
+  const { offset_s, rate, reference_s } = clock;
+  if (offset_s === 0 && rate === 0) return heater;
+  return { ...heater, start_s: heater.start_s.map((t) => t + offset_s + rate * (t - reference_s)) };
 }
 
-/** The trial start from which the temperature rises most over the pulse's length. */
-function steepestRise(samples: Samples, duration: number, reach: number, interval_s: number): number | null {
-  const level = (t: number): number => interpolate(samples, t);
-  let best: number | null = null;
-  let rise = 0;
-  let quiet = 0;
-  for (let t = -reach; t <= reach; t += interval_s) {
-    const change = level(t + duration) - level(t);
-    if (change > rise) {
-      rise = change;
-      best = t;
-    }
-    quiet = Math.max(quiet, Math.abs(level(-reach) - level(-2 * reach)));
-  }
-  return rise > 5 * quiet ? best : null;
+/** The strongest pulse of each part of the night: the strongest of all crowd at one end of it. */
+function clearest(heater: HeaterPulses): number[] {
+  const sound = [...heater.pulse.keys()].filter((i) => heater.flag[i] === 0);
+  const parts = Math.min(ENOUGH, sound.length);
+  return Array.from({ length: parts }, (_, k) => {
+    const part = sound.slice(
+      Math.round((k * sound.length) / parts),
+      Math.round(((k + 1) * sound.length) / parts),
+    );
+    return part.reduce((best, i) => (heater.Q_J[i]! > heater.Q_J[best]! ? i : best));
+  });
+}
+
+/** Offset alone. */
+function levelOf(seen: readonly Seen[]): Estimate {
+  const middle = median(seen.map(({ onset }) => onset.best_s));
+  const half = roomAround(seen, () => middle);
+  return judged(seen, [[middle - half, middle + half]])[0]!;
+}
+
+/** Offset at the reference, and rate. */
+function lineOf(seen: readonly Seen[]): { readonly offset: Estimate; readonly rate: Estimate } {
+  const slopes = seen.flatMap((a, k) =>
+    seen.slice(k + 1).map((b) => (b.onset.best_s - a.onset.best_s) / (b.time_s - a.time_s)),
+  );
+  // Theil (1950) and Sen (J. Am. Stat. Assoc. 63, 1379 (1968)), to know where to look.
+  const slope = median(slopes);
+  const middle = median(seen.map(({ onset, time_s }) => onset.best_s - slope * time_s));
+  const half = roomAround(seen, (time_s) => middle + slope * time_s);
+  const steepest = half / Math.max(...seen.map(({ time_s }) => Math.abs(time_s)));
+  const [offset, rate] = judged(seen, [
+    [middle - half, middle + half],
+    [slope - steepest, slope + steepest],
+  ]);
+  return { offset: offset!, rate: rate! };
 }
 
 /**
- * Where the drift before meets the first part of the rise. The first part is short, so the bend of the rise does
- * not matter, and it begins two samples after the coarse start, so the thermometer's own lag matters little.
+ * Plain corners put each onset between two samples, and whatever bends the trace by less than that moves it without
+ * a sign. So the value is theirs where the bent ones do not rule it out, and the uncertainty is that of the bent ones.
  */
-function corner(samples: Samples, coarse: number, duration: number, interval_s: number): number | null {
-  const { time_s, temperature_K } = samples;
-  const pick = (from: number, to: number) => {
-    const index = [...time_s.keys()].filter((j) => time_s[j]! >= from && time_s[j]! <= to);
-    return {
-      t: Float64Array.from(index, (j) => time_s[j]!),
-      T: Float64Array.from(index, (j) => temperature_K[j]!),
-    };
-  };
-  const before = pick(Number.NEGATIVE_INFINITY, coarse - 2 * interval_s);
-  const rise = pick(coarse + 2 * interval_s, coarse + duration - 2 * interval_s);
-  if (before.t.length < 6 || rise.t.length < 4) return null;
-  const base = fitPolynomial(before.t, before.T, null, 1);
-  const ramp = fitPolynomial(rise.t, rise.T, null, rise.t.length < 8 ? 1 : 2);
-  const noise = 1.4826 * medianOf(before.T.map((T, j) => Math.abs(T - base.value(before.t[j]!))));
-  const base_K = (t: number): number => base.value(t);
-  if (!(ramp.value(coarse + duration) - base_K(coarse + duration) > 20 * noise)) return null;
-  let t = coarse;
-  for (let round = 0; round < 20; round++) {
-    const slope = ramp.slope(t) - base.slope(t);
-    if (!(slope > 0)) return null;
-    const next = t - (ramp.value(t) - base_K(t)) / slope;
-    if (Math.abs(next - t) < 1e-6) break;
-    t = next;
-  }
-  // A body that overheats at once lifts the whole ramp, and the corner comes out too early. The first two samples
-  // in a row above the drift say between which samples the heater really started.
-  const above = (j: number): boolean => temperature_K[j]! - base_K(time_s[j]!) > 6 * noise;
-  let first = 1;
-  while (
-    first + 1 < time_s.length &&
-    !(time_s[first]! > coarse - duration && above(first) && above(first + 1))
-  )
-    first++;
-  if (first + 1 >= time_s.length) return null;
-  const from = time_s[first - 1]!;
-  const to = time_s[first]!;
-  const jump_K = temperature_K[first]! - base_K(to) - (temperature_K[first - 1]! - base_K(from));
-  const jumped = jump_K > 2 * ramp.slope(to) * (to - from) + 4 * noise;
-  if (!jumped) return t;
-  return t < from ? (from + to) / 2 : Math.min(t, to);
+function judged(seen: readonly Seen[], box: readonly (readonly [number, number])[]): Estimate[] {
+  const sumOf = (which: Which, [offset, rate]: readonly number[]): number =>
+    seen.reduce((sum, each) => sum + logLikelihood(each, which, [offset!, rate ?? 0]), 0);
+  const moments = (which: Which): GridMoments => gridMoments((at) => sumOf(which, at), box);
+  const [plain, bent] = [moments("plain_per_s"), moments("bent_per_s")];
+  const agree = sumOf("bent_per_s", plain.mean) > bent.top - ruledOut(seen);
+  return bent.mean.map((value, k) =>
+    agree
+      ? { value: plain.mean[k]!, u: Math.hypot(bent.sd[k]!, plain.mean[k]! - value) }
+      : { value, u: bent.sd[k]! },
+  );
 }
 
-function interpolate(samples: Samples, t: number): number {
-  const { time_s, temperature_K } = samples;
-  let low = 0;
-  let high = time_s.length - 1;
-  if (t <= time_s[0]!) return temperature_K[0]!;
-  if (t >= time_s[high]!) return temperature_K[high]!;
-  while (high - low > 1) {
-    const middle = (low + high) >>> 1;
-    if (time_s[middle]! <= t) low = middle;
-    else high = middle;
-  }
-  const share = (t - time_s[low]!) / (time_s[high]! - time_s[low]!);
-  return temperature_K[low]! + share * (temperature_K[high]! - temperature_K[low]!);
+/** How far from a line the posterior may reach: its onsets' scatter, and what each of them leaves open. */
+function roomAround(seen: readonly Seen[], line: (time_s: number) => number): number {
+  const scatter = 1.4826 * median(seen.map(({ onset, time_s }) => Math.abs(onset.best_s - line(time_s))));
+  const open = seen.map(({ onset, within_s }) => within_s + (onset.bent_per_s.length * onset.step_s) / 2);
+  return 3 * scatter + median(open);
+}
+
+type Which = "bent_per_s" | "plain_per_s";
+
+function logLikelihood({ onset, time_s, within_s }: Seen, which: Which, [offset_s, rate]: Clock): number {
+  const density = densityAt(onset, onset[which], offset_s + rate * time_s, within_s);
+  return Math.log((1 - ASTRAY) * density + ASTRAY / (2 * REACH_S));
+}
+
+/** Density of the onset at a time, or its mean within ± a half-width. */
+function densityAt(
+  { from_s, step_s }: Onset,
+  density_per_s: Float64Array,
+  at_s: number,
+  within_s: number,
+): number {
+  const place = (t: number): number => (t - from_s) / step_s;
+  if (within_s < step_s) return interpolated(density_per_s, place(at_s));
+  const first = Math.max(0, Math.ceil(place(at_s - within_s)));
+  const last = Math.min(density_per_s.length - 1, Math.floor(place(at_s + within_s)));
+  let sum = 0;
+  for (let j = first; j <= last; j++) sum += density_per_s[j]!;
+  return (sum * step_s) / (2 * within_s);
+}
+
+function interpolated(values: Float64Array, place: number): number {
+  const j = Math.floor(place);
+  if (!(j >= 0 && j + 1 < values.length)) return 0;
+  return values[j]! + (place - j) * (values[j + 1]! - values[j]!);
 }

@@ -16,6 +16,8 @@ export interface HeaterPulses {
   readonly pulse: Int32Array;
   readonly start_s: Float64Array;
   readonly duration_s: Float64Array;
+  /** The start lies anywhere within ± this: half of what two samples leave open. 0 for events. */
+  readonly start_within_s: Float64Array;
   /** Heat that reaches the cell: ∫VI dt and the inward part of the lead heat. */
   readonly Q_J: Float64Array;
   readonly lead_heat_J: Float64Array;
@@ -33,6 +35,7 @@ export interface HeaterPulses {
 interface Electrical {
   readonly start_s: number;
   readonly duration_s: number;
+  readonly start_within_s: number;
   /** ∫VI dt and ∫I² dt. */
   readonly energy_J: number;
   readonly currentSquared_A2s: number;
@@ -62,6 +65,7 @@ export function heaterPulses(
     pulse: Int32Array.from(rows, (_, i) => i + 1),
     start_s: Float64Array.from(rows, (row) => row.start_s),
     duration_s: Float64Array.from(rows, (row) => row.duration_s),
+    start_within_s: Float64Array.from(rows, (row) => row.start_within_s),
     Q_J: Float64Array.from(rows, (row, i) => row.energy_J + lead[i]!),
     lead_heat_J: Float64Array.from(lead),
     currentSquared_A2s: Float64Array.from(rows, (row) => row.currentSquared_A2s),
@@ -101,6 +105,7 @@ function fromEvents(log: HeaterEvents): Electrical[] {
     return {
       start_s,
       duration_s,
+      start_within_s: 0,
       energy_J,
       currentSquared_A2s: current * current * duration_s,
       resistance_Ohm: voltage / current,
@@ -154,6 +159,11 @@ function fromSamples(log: HeaterSamples, programmed: PulseLength | null): Electr
     return {
       start_s: middle_s - duration_s / 2,
       duration_s,
+      // Where the length is known, both edges bound the start: what they leave open is the overlap of two intervals.
+      start_within_s:
+        shared === null
+          ? row.interval_s / 2
+          : Math.max(0, row.interval_s - Math.abs(row.duration_s - duration_s)) / 2,
       energy_J,
       currentSquared_A2s: row.current_A * row.current_A * duration_s,
       resistance_Ohm: row.resistance_Ohm,
