@@ -55,7 +55,7 @@ export function reduceNight(
     log.kind === "sampled" ? (log.pulse_length ?? null) : null,
   );
   const clock = clockOf(run, () => clockOffset(trace, read));
-  const pulses = onThermometerClock(read, clock.offset_s);
+  const pulses = onThermometerClock(read, clock);
   const verdicts = run.config.veto.map(({ pulse, reason, keep }) => ({ pulse, reason, keep: keep === true }));
   const { table, pictures } = analysePulses({
     trace,
