@@ -14,6 +14,7 @@ import { type HeaterPulses, heaterPulses } from "../stages/pulses/heater-pulses.
 import type { PulseMethod, PulsePicture, PulseTable } from "../stages/pulses/types.js";
 import { samplingInterval_s } from "../stages/pulses/window.js";
 import { scaleNotes } from "../stages/thermometry/scale.js";
+import { selfHeatingEffect } from "../stages/thermometry/self-heating.js";
 import { toTemperature } from "../stages/thermometry/to-temperature.js";
 import type { Calibration } from "../stages/thermometry/types.js";
 import type { Cell, Run } from "./config/load.js";
@@ -54,7 +55,7 @@ export function reduceNight(
     { lead_resistance_Ohm: heater.lead_resistance.value, lead_share: heater.lead_share.value },
     log.kind === "sampled" ? (log.pulse_length ?? null) : null,
   );
-  const clock = clockOf(run, () => clockOffset(trace, read));
+  const clock = clockOf(run, () => clockOffset(trace, read, calibration.lag_s));
   const pulses = onThermometerClock(read, clock);
   const verdicts = run.config.veto.map(({ pulse, reason, keep }) => ({ pulse, reason, keep: keep === true }));
   const { table, pictures } = analysePulses({
@@ -63,6 +64,7 @@ export function reduceNight(
     stage: raw.stage,
     contents,
     u_clock_s: clockLeft_s(clock, trace.time_s),
+    lag_s: calibration.lag_s,
     // An edge lies anywhere between two samples of the heater.
     u_start_s: raw.heater.kind === "events" ? 0 : samplingInterval_s(raw.heater.time_s) / Math.sqrt(12),
     verdicts,
@@ -74,7 +76,7 @@ export function reduceNight(
     pictures,
     clock,
     u_temperature_K: calibration.u_temperature_K,
-    heatSources: heatSources(run.run, pulses, heater),
+    heatSources: [...heatSources(run.run, pulses, heater), ...riseSources(calibration, table)],
     notes: [
       ...raw.notes.map(
         ({ file, line, count, text }) =>
@@ -84,7 +86,11 @@ export function reduceNight(
       ...scaleNotes(calibration),
       ...methodNotes(table, contents),
       ...(clock.applied
-        ? [`heater clock moved by ${clock.offset_s.toFixed(2)} s ± ${clock.u_s.toFixed(2)} s`]
+        ? [
+            `heater clock moved by ${clock.offset_s.toFixed(2)} s ± ${clock.u_s.toFixed(2)} s${
+              clock.rate === 0 ? "" : `, and by ${(3600 * clock.rate).toPrecision(2)} s an hour`
+            }`,
+          ]
         : []),
     ],
   };
@@ -106,6 +112,25 @@ function clockOf(run: Run, estimate: () => ClockOffset): ClockOffset {
 function clockLeft_s(clock: ClockOffset, time_s: Float64Array): number {
   const hidden_s = samplingInterval_s(time_s) / 4;
   return Number.isFinite(clock.u_s) ? Math.hypot(clock.u_s, hidden_s) : hidden_s;
+}
+
+/**
+ * What is common to all rises of a night, as a relative change of C. An offset of the scale cancels in a rise; an error of
+ * its slope does not, and a self-heating that changes within the rise does not either.
+ */
+function riseSources(calibration: Calibration, { T_K, dT_K }: PulseTable): EffectOfHeat[] {
+  return [
+    {
+      name: "temperature_slope",
+      title: "slope of the thermometer scale",
+      relative: T_K.map(() => -calibration.u_slope),
+    },
+    {
+      name: "self_heating",
+      title: "self-heating of the thermometer",
+      relative: selfHeatingEffect(calibration, T_K, dT_K).relative.map((r) => (Number.isFinite(r) ? r : 0)),
+    },
+  ];
 }
 
 /** Which pulses asked for a model, and what that rests on. */

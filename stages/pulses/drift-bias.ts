@@ -10,13 +10,15 @@ export interface DriftBias {
    */
   readonly lag: number;
   readonly u_lag: number;
-  /** What is left after the correction, at most; Infinity where settling takes a fair part of the window. */
+  /** What is left after the correction, at most; Infinity where settling or something else takes a fair part of the window. */
   readonly left: number;
 }
 
 /** Settling this long a part of the window is a second body that the lines cannot hold. */
 const SETTLE_SHARE = 0.06;
 const NEIGHBOURS = 15;
+/** A drift after the pulse that holds for less than this part of the time to the next is none of a quiet night's. */
+const SHORT_SHARE = 0.2;
 /** A lag above this is found by a model, not by its first order. */
 const LARGEST_LAG = 2e-3;
 
@@ -54,10 +56,11 @@ export function driftBias(
   const moved = (rate * (between_s + spanAfter_s / 10) * travel_K) / Math.abs(rise_K);
   const secondOrder = Math.abs(lag) * Math.max(0.05, rate * between_s);
   const settling = settle_s > SETTLE_SHARE * (settle_s + spanAfter_s) || Math.abs(lag) > LARGEST_LAG;
+  const short = spanAfter_s < SHORT_SHARE * (span.latest_s - span.end_s);
   return {
     lag,
     u_lag: step.step.u_s * rate,
-    left: settling ? Number.POSITIVE_INFINITY : bend + moved + secondOrder,
+    left: settling || short ? Number.POSITIVE_INFINITY : bend + moved + secondOrder,
   };
 }
 
