@@ -7,6 +7,7 @@ import type { FittedCurve, PulseMethod, PulsePicture } from "./types.js";
 import { firstAtOrAfter, type Samples, sampleRange, usableSamples } from "./window.js";
 
 const POINTS = 160;
+const MARGIN = 0.05;
 
 /** How a pulse was read: drift lines, or a model on its own blocks of samples. */
 export interface PictureSource {
@@ -26,8 +27,17 @@ export function pulsePicture(
   source: PictureSource | null,
 ): PulsePicture {
   const { start_s, end_s } = span;
-  const seen = usableSamples(trace, sampleRange(trace.time_s, span.earliest_s, span.latest_s), start_s);
   const length_s = end_s - start_s;
+  const fitted = fittedOf(source, length_s);
+  const [first, last] = [fitted?.windows[0], fitted?.windows.at(-1)];
+  // What was fitted and a little around it: a step of the stage long before would dwarf the pulse.
+  const margin_s = first === undefined ? 0 : MARGIN * (last!.to_s - first.from_s);
+  const from_s = Math.max(
+    span.earliest_s,
+    first === undefined ? span.earliest_s : start_s + first.from_s - margin_s,
+  );
+  const to_s = Math.min(span.latest_s, last === undefined ? span.latest_s : start_s + last.to_s + margin_s);
+  const seen = usableSamples(trace, sampleRange(trace.time_s, from_s, to_s), start_s);
   const near = (t: number) => t > -length_s && t < 3 * length_s;
   const inside = seen.time_s.reduce((count, t) => (near(t) ? count + 1 : count), 0);
   const strideNear = Math.max(1, Math.ceil(inside / (POINTS / 2)));
@@ -38,7 +48,6 @@ export function pulsePicture(
   });
   const time_s = Float64Array.from(kept, (i) => seen.time_s[i]!);
   const temperature_K = Float64Array.from(kept, (i) => seen.temperature_K[i]!);
-  const fitted = fittedOf(source, length_s);
   return {
     pulse,
     method: source?.method ?? "drift",

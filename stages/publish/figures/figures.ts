@@ -108,12 +108,16 @@ async function nightFigures(night: NightReport): Promise<Record<string, string>>
       `Total heat capacity of each pulse of ${run} against temperature, flagged pulses marked`,
     );
   for (const picture of night.pictures)
-    figures[pulseKey(run, picture.pulse)] = pulsePictureSvg(picture, pulseLabel(table, picture));
+    figures[pulseKey(run, picture.pulse)] = pulsePictureSvg(
+      picture,
+      pulseLabel(table, picture),
+      table.used[table.pulse.indexOf(picture.pulse)] === 0 ? "left out" : "used",
+    );
   return figures;
 }
 
 function pulseLabel(table: PulseTable, picture: PulsePicture): string {
   const i = table.pulse.indexOf(picture.pulse);
   const step = i < 0 ? Number.NaN : table.dT_K[i]!;
-  return `Pulse ${picture.pulse}: temperature against time${Number.isFinite(step) ? `, step ${temperatureText(step)}` : ""}`;
+  return `Pulse ${picture.pulse}: temperature against time, and residuals${Number.isFinite(step) ? `, step ${temperatureText(step)}` : ""}`;
 }

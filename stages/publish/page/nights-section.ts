@@ -8,6 +8,7 @@ import type { CampaignReport, NightReport } from "../types.js";
 import { nightAddendaShare, nightNoise_K, percent, temperatureText } from "../words.js";
 import { counted, figure, inline, numbers, table, typeset, words } from "./parts.js";
 
+const METHOD_WORDS = { drift: "drift lines", "two-body": "body and liquid", relaxation: "one body" } as const;
 const STATUS_WORDS = { reduced: "reduced", reused: "kept from before", failed: "failed" } as const;
 
 function remarks(night: NightReport): Content {
@@ -80,7 +81,10 @@ function pulseFigure(table: PulseTable, picture: PulsePicture, svg: string | und
   const facts = [
     `${withZeros(table.T_K[i]!, 4)} K`,
     `ΔT ${temperatureText(table.dT_K[i]!)}`,
-    table.method[i]!,
+    METHOD_WORDS[table.method[i]!],
+    ...(Number.isFinite(table.boundary_time_s[i]!)
+      ? [`boundary ${significant(table.boundary_time_s[i]!, 2)} s`]
+      : []),
   ].join(" · ");
   const doubt = doubts(table, i);
   const out = table.used[i] === 0;
@@ -120,7 +124,7 @@ export function nightsSection(report: CampaignReport, figures: Readonly<Record<s
   return html`<section id="nights"><h2>Nights</h2>
 ${nightsTable(report)}${scatter(report.between_nights)}
 <h3>Every pulse</h3>
-<p>Dots: samples. Lines: the fits before and after, carried on to the step (dashed). Band: heater on. Times count from the start of the pulse.</p>
+<p>Dots: samples. Lines: drift lines carried on to the step (dashed), or a forward model through all of it. Band: heater on. Time counts from the start of the pulse and is stretched about it: the pulse and its first settling stand between the two marks, the second of which has its time below. Strip: residuals in units of the noise, ±5 from edge to edge, the band ±2; the rule below it spans what was fitted. A cross marks a pulse that is left out.</p>
 ${report.nights.map((night, i) => nightDetails(night, i + 1, figures))}</section>
 `;
 }

@@ -86,15 +86,39 @@ test("a night's overview tells used, flagged and left-out pulses apart", () => {
   expect(total(marks(svg, "symbol"))).toBe(12);
 });
 
-test("each pulse has a picture of at most 3 kB, of its samples, fits and step", () => {
+test("each pulse has a picture of at most 5 kB, of its samples, fits, step and residuals", () => {
   const night = campaign.nights[1]!;
   for (const picture of night.pictures) {
     const svg = figures[pulseKey(night.run, picture.pulse)]!;
-    expect(Buffer.byteLength(svg)).toBeLessThanOrEqual(3000);
-    expect(svg.match(/h0/g)).toHaveLength(picture.time_s.length);
+    expect(Buffer.byteLength(svg)).toBeLessThanOrEqual(5000);
+    const residuals = picture.residual_K.filter(Number.isFinite).length;
+    expect(svg.match(/h0/g)).toHaveLength(picture.time_s.length + residuals);
     expect(svg).toContain("stroke-dasharray");
     expect(svg).toContain("−60 s");
   }
+});
+
+test("a residual of three noises stands at its height, one of a hundred at the edge, and a pulse left out is crossed", () => {
+  const picture = campaign.nights[1]!.pictures[0]!;
+  const flat = picture.residual_K.map(() => 0);
+  const heights = (first: number): number[] => {
+    const residual_K = flat.slice();
+    residual_K[0] = first * picture.noise_K;
+    const svg = pulsePictureSvg({ ...picture, residual_K }, "a pulse");
+    // The strip's own dots: M x y of the first, then the step to the second, which is on the line of zero.
+    const path = svg.match(/stroke-width="3.5"[^>]*>/g);
+    expect(path).not.toBeNull();
+    const strip = [
+      ...svg.matchAll(/<path d="M(\d+) (\d+)h0[^"]*" stroke="currentColor" stroke-width="3.5"/g),
+    ];
+    return strip.map((match) => Number(match[2]));
+  };
+  // From 302 at −5 to 222 at +5, eight units each.
+  expect(heights(3)).toEqual([238]);
+  expect(heights(-1)).toEqual([270]);
+  expect(heights(100)).toEqual([222]);
+  expect(pulsePictureSvg(picture, "out", "left out")).toContain("l22 22m0-22l-22 22");
+  expect(pulsePictureSvg(picture, "in")).not.toContain("l22 22m0-22l-22 22");
 });
 
 test("a pulse without fits, or without samples, is still drawn", () => {
