@@ -12,7 +12,7 @@ export interface StartLikelihood {
   readonly bent: number;
   /** Without it, unless it fits so much better that its three numbers are paid for. */
   readonly plain: number;
-  /** Whether they are paid for. */
+  /** Whether it is. */
   readonly bends: boolean;
 }
 
@@ -40,8 +40,9 @@ const LATEST = 2;
  * Fits samples around a pulse by what it does to a cell: a drift, a ramp while the heater is on, the bend that a leak
  * gives it, and an exponential of time τ at either end. A body that overheats against its liquid jumps ahead of the
  * ramp, a thermometer that lags stays behind it, and a plain corner takes both for another start. The ramp of the
- * second fit is behind by as much as lags of that time can bring about, and what is ahead of it is not negative. τ goes down to a jump between two samples, which cannot be told from an earlier start: there the
- * likelihood is flat, as it should be.
+ * second fit is behind by as much as lags of that time can bring about, and what is ahead of it is not negative. τ goes
+ * down to a jump between two samples, which cannot be told from another start: there the likelihood is flat, as it
+ * should be.
  *
  * The plain corner is chosen by G. Schwarz, Ann. Stat. 6, 461 (1978). The noise is not known, so the likelihoods are
  * Student's.
