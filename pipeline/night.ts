@@ -2,7 +2,7 @@ import { basename } from "node:path";
 import { sampleFlagWords } from "../stages/ingest/flag-words.js";
 import type { RawNight } from "../stages/ingest/types.js";
 import { analysePulses } from "../stages/pulses/analyse.js";
-import type { Contents } from "../stages/pulses/cell-laws.js";
+import { type Contents, localLaw } from "../stages/pulses/cell-laws.js";
 import {
   type ClockOffset,
   clockOffset,
@@ -10,7 +10,7 @@ import {
   onThermometerClock,
 } from "../stages/pulses/clock-offset.js";
 import type { HeaterConfig, PulsesConfig } from "../stages/pulses/config.js";
-import { type HeaterPulses, heaterPulses } from "../stages/pulses/heater-pulses.js";
+import { type HeaterPulses, heaterPulses, leftOnAtEnd } from "../stages/pulses/heater-pulses.js";
 import type { PulseMethod, PulsePicture, PulseTable } from "../stages/pulses/types.js";
 import { samplingInterval_s } from "../stages/pulses/window.js";
 import { scaleNotes } from "../stages/thermometry/scale.js";
@@ -56,7 +56,10 @@ export function reduceNight(
     log.kind === "sampled" ? (log.pulse_length ?? null) : null,
   );
   const clock = clockOf(run, () => clockOffset(trace, read, calibration.lag_s));
-  const pulses = onThermometerClock(read, clock);
+  const pulses = leftOnAtEnd(
+    onThermometerClock(read, clock),
+    trace.time_s[trace.time_s.length - 1] ?? Number.NaN,
+  );
   const verdicts = run.config.veto.map(({ pulse, reason, keep }) => ({ pulse, reason, keep: keep === true }));
   const { table, pictures } = analysePulses({
     trace,
@@ -116,9 +119,16 @@ function clockLeft_s(clock: ClockOffset, time_s: Float64Array): number {
 
 /**
  * What is common to all rises of a night, as a relative change of C. An offset of the scale cancels in a rise; an error of
- * its slope does not, and a self-heating that changes within the rise does not either.
+ * its slope does not, and a self-heating that changes within the rise does not either. Self-heating moves T too, and with it
+ * the C that belongs there: for C ∝ T³ at constant power the two cancel.
  */
-function riseSources(calibration: Calibration, { T_K, dT_K }: PulseTable): EffectOfHeat[] {
+function riseSources(calibration: Calibration, { T_K, dT_K, C_total_J_per_K }: PulseTable): EffectOfHeat[] {
+  const { relative, shift_K } = selfHeatingEffect(calibration, T_K, dT_K);
+  const heated = (i: number): number => {
+    const { power } = localLaw(T_K, C_total_J_per_K, T_K[i]!, (T) => T ** 3);
+    const change = relative[i]! - (power * shift_K[i]!) / T_K[i]!;
+    return Number.isFinite(change) ? change : 0;
+  };
   return [
     {
       name: "temperature_slope",
@@ -128,7 +138,7 @@ function riseSources(calibration: Calibration, { T_K, dT_K }: PulseTable): Effec
     {
       name: "self_heating",
       title: "self-heating of the thermometer",
-      relative: selfHeatingEffect(calibration, T_K, dT_K).relative.map((r) => (Number.isFinite(r) ? r : 0)),
+      relative: calibration.selfHeating === null ? T_K.map(() => 0) : T_K.map((_, i) => heated(i)),
     },
   ];
 }

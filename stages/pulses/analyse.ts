@@ -10,11 +10,12 @@ import { flagBits } from "./flags.js";
 import type { ForwardFit } from "./forward-fit.js";
 import { type ForwardFits, fitForwardNight } from "./forward-night.js";
 import type { HeaterPulses } from "./heater-pulses.js";
+import { clearestJump } from "./jump.js";
 import { pulsePicture } from "./picture.js";
 import type { Transient } from "./prepared-transient.js";
 import { type StageWindow, stageWindow } from "./stage-window.js";
 import { PulseFlag, type PulseMethod, type PulsePicture, type PulseTable } from "./types.js";
-import { sampleRange, samplingInterval_s } from "./window.js";
+import { sampleRange, samplingInterval_s, usableSamples } from "./window.js";
 
 /** A person's word on a pulse: out, or in spite of its flags in. */
 export interface Verdict {
@@ -64,6 +65,8 @@ interface Reading {
   readonly u_link_W_per_K: number;
 }
 
+/** A reading that jumps later than this after a pulse is cut off with the rest of the drift. */
+const JUMP_S = 80;
 /** A bias of this part of the uncertainty is not worth a model. */
 const BIAS_SHARE = 0.2;
 
@@ -344,6 +347,7 @@ function doubts(
   let flag = heater.flag[i]!;
   const off = Math.abs(heater.resistance_Ohm[i]! / ordinary.resistance_Ohm - 1);
   if (off > config.heater_resistance_tolerance) flag |= PulseFlag.HeaterResistance;
+  if (Math.abs(heater.power_change[i]!) > config.largest_power_change) flag |= PulseFlag.HeaterUnsteady;
   const window_s = span.latest_s - span.end_s;
   if (window_s < 0.5 * ordinary.window_s || span.start_s - span.earliest_s < 0.1 * ordinary.window_s) {
     flag |= PulseFlag.Truncated;
@@ -374,6 +378,8 @@ function doubts(
     const after_s = drift!.afterSamples.time_s[drift!.afterSamples.time_s.length - 1]!;
     const moved = window === null ? 0 : stageHeat(window, reading, span, after_s);
     if (moved > config.largest_stage_share) flag |= PulseFlag.StageNotSteady;
+    const soon = sampleRange(trace.time_s, span.end_s, Math.min(span.latest_s, span.end_s + JUMP_S));
+    if (clearestJump(usableSamples(trace, soon, span.end_s)) !== null) flag |= PulseFlag.ReadingJumps;
     return flag;
   }
   if (fit.boundary_s > config.largest_boundary_share * window_s) flag |= PulseFlag.SlowBoundary;

@@ -53,6 +53,10 @@ export const pulsesSchema = z
       0.005,
       "Largest misfit of the chosen model that noise does not explain, relative to the rise: unexplained.",
     ),
+    largest_power_change: share(
+      0.05,
+      "Largest relative change of the heater's power within a pulse of a sampled log: heater-unsteady.",
+    ),
     heater_resistance_tolerance: share(
       0.02,
       "Largest relative distance of the heater's resistance from the night's median: heater-resistance.",

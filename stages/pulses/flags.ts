@@ -65,6 +65,16 @@ export const PULSE_FLAGS: readonly FlagWords[] = [
     name: "unexplained",
     words: "no method describes the trace: heat that no log shows, or a cell of another kind",
   },
+  {
+    bit: PulseFlag.HeaterUnsteady,
+    name: "heater-unsteady",
+    words: "heater power changed during the pulse",
+  },
+  {
+    bit: PulseFlag.ReadingJumps,
+    name: "reading-jumps",
+    words: "reading jumped soon after the pulse: a change of range?",
+  },
 ];
 
 export const PULSE_FLAG_NAMES: readonly string[] = PULSE_FLAGS.map((flag) => flag.name);

@@ -17,6 +17,8 @@ export const PulseFlag = {
   SlowBoundary: 16384,
   StageNotSteady: 32768,
   Unexplained: 65536,
+  HeaterUnsteady: 131072,
+  ReadingJumps: 262144,
 } as const;
 
 export type PulseMethod = "drift" | "two-body" | "relaxation";

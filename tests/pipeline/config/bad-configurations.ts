@@ -573,7 +573,7 @@ export const BAD_CONFIGURATIONS: readonly BadConfiguration[] = [
     replace: "  pulses:   { method: auto }",
     by: "  pulses: auto",
     message: [
-      'campaigns/fjord-7.yaml:9: reduction.pulses is "auto"; expected a block with the keys method, settle, window, smallest_rise, largest_rise, largest_drift_share, largest_settle_share, largest_missing_share, largest_spike_share, largest_boundary_share, largest_stage_share, largest_misfit, heater_resistance_tolerance, exclude_flags.',
+      'campaigns/fjord-7.yaml:9: reduction.pulses is "auto"; expected a block with the keys method, settle, window, smallest_rise, largest_rise, largest_drift_share, largest_settle_share, largest_missing_share, largest_spike_share, largest_boundary_share, largest_stage_share, largest_misfit, largest_power_change, heater_resistance_tolerance, exclude_flags.',
       "  Way out: write pulses: { method: auto }",
     ],
   },
@@ -744,7 +744,7 @@ export const BAD_CONFIGURATIONS: readonly BadConfiguration[] = [
     replace: "method: auto",
     by: "method: auto, exclude_flags: [spike]",
     message: [
-      'campaigns/fjord-7.yaml:9: reduction.pulses.exclude_flags[0] is "spike"; expected no-data, rise-too-small, rise-too-large, drift-too-strong, not-settled, samples-missing, spikes, outside-calibration, heater-resistance, truncated, zero-energy, voltage-inverted, heater-left-on, slow-boundary, stage-not-steady or unexplained.',
+      'campaigns/fjord-7.yaml:9: reduction.pulses.exclude_flags[0] is "spike"; expected no-data, rise-too-small, rise-too-large, drift-too-strong, not-settled, samples-missing, spikes, outside-calibration, heater-resistance, truncated, zero-energy, voltage-inverted, heater-left-on, slow-boundary, stage-not-steady, unexplained, heater-unsteady or reading-jumps.',
       "  Way out: did you mean spikes?",
     ],
   },
