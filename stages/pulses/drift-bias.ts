@@ -101,11 +101,15 @@ function truncation(degree: number, x: number, beyond: number): number {
   return term * Math.exp(-x / 2) * (1 + n * (n + 1) * beyond);
 }
 
-/** Range of the stage's temperature in a window, from means over eighths of it: a noisy log does not move. */
+/**
+ * Range of the stage's temperature in a window, from means over eighths of it: a noisy log does not move. A little of
+ * either end is left out, for a window often ends where the stage steps.
+ */
 function stageTravel_K(stage: StageWindow, from_s: number, to_s: number): number {
-  const eighth = (to_s - from_s) / 8;
+  const inset_s = 0.02 * (to_s - from_s);
+  const eighth_s = (to_s - from_s - 2 * inset_s) / 8;
   const means = Array.from({ length: 8 }, (_, k) =>
-    stage.mean_K(from_s + k * eighth, from_s + (k + 1) * eighth),
+    stage.mean_K(from_s + inset_s + k * eighth_s, from_s + inset_s + (k + 1) * eighth_s),
   );
   return Math.max(...means) - Math.min(...means);
 }
