@@ -1,3 +1,4 @@
+import { existsSync, readFileSync, statSync } from "node:fs";
 import { InputError } from "../stages/errors.js";
 import { pointsCsv } from "../stages/publish/dataset.js";
 import type { Contents } from "../stages/pulses/cell-laws.js";
@@ -43,6 +44,21 @@ async function contentsOn(campaign: Campaign, run: Run, pulses: Job["pulses"]): 
   return contentsOf(addendaOf(campaign, nights));
 }
 
+/** What stands at `--out` may be points of before, never a log or a configuration. @throws InputError */
+function requireOwnFile(out: string): void {
+  if (!existsSync(out)) return;
+  const head = statSync(out).isFile() ? readFileSync(out, "utf8").slice(0, OWN_HEAD.length) : "";
+  if (head === OWN_HEAD || (statSync(out).isFile() && statSync(out).size === 0)) return;
+  throw new InputError({
+    key: "--out",
+    value: out,
+    expected: "a new file, or points written before",
+    wayOut: "name another file: what is there is not overwritten",
+  });
+}
+
+const OWN_HEAD = "pulse,start_s,";
+
 type Options = CommonOptions & Readonly<Record<string, unknown>>;
 
 async function jobOf(options: Options): Promise<Job> {
@@ -85,7 +101,10 @@ export async function reduceCommandLine(options: Options): Promise<ExitCode> {
   const night = await reduceRun(await jobOf(options));
   const csv = pointsCsv(night.table);
   const out = options["out"] as string | undefined;
-  if (out !== undefined) writeWhole(out, csv);
+  if (out !== undefined) {
+    requireOwnFile(out);
+    writeWhole(out, csv);
+  }
   const used = night.table.used.reduce((sum, u) => sum + u, 0);
   teller.step(`${night.run}: ${used} of ${night.table.used.length} pulses used`);
   for (const note of night.notes) teller.step(`  ${note}`);

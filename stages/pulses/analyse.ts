@@ -152,7 +152,7 @@ export function analysePulses(inputs: PulseInputs): PulseAnalysis {
       if (!verdict.keep) flag[i]! |= PulseFlag.Vetoed;
     }
     // Nobody's word can make a number where there is none.
-    if (!(C[i]! > 0) || !Number.isFinite(C[i]!)) used[i] = 0;
+    if (!(C[i]! > 0) || !Number.isFinite(C[i]!) || !Number.isFinite(u_dT_K[i]!)) used[i] = 0;
   }
 
   const table: PulseTable = {

@@ -1,7 +1,7 @@
 import { mkdirSync, readdirSync, readFileSync, writeFileSync } from "node:fs";
 import { join } from "node:path";
 import { expect, test } from "vitest";
-import { freshFolder, ROOT, rotonwell } from "./program.js";
+import { demoCopy, freshFolder, ROOT, rotonwell } from "./program.js";
 
 const CAMPAIGN = join(ROOT, "configs/campaigns/fjord-7.yaml");
 
@@ -64,6 +64,19 @@ test("reduce: one night, as CSV and as JSON, by either way of naming it", () => 
     points: { pulse: number[] };
   };
   expect(json.points.pulse.length).toBe(36);
+});
+
+test("reduce --out: a log or a configuration is never overwritten, points of before are", () => {
+  const demo = demoCopy();
+  const campaign = ["reduce", "--campaign", demo.campaign, "--run-id", "2026-11-14-a", "--quiet", "--out"];
+  const before = readFileSync(demo.campaign, "utf8");
+  const refused = rotonwell([...campaign, demo.campaign]);
+  expect(refused.code).toBe(2);
+  expect(refused.stderr).toContain("expected a new file, or points written before");
+  expect(readFileSync(demo.campaign, "utf8")).toBe(before);
+  const points = join(freshFolder(), "points.csv");
+  expect(rotonwell([...campaign, points]).code).toBe(0);
+  expect(rotonwell([...campaign, points]).code).toBe(0);
 });
 
 /** Published Cv (Godfrin et al., Phys. Rev. B 103, 104516 (2021), Supplemental Table I) in the command's columns. */
