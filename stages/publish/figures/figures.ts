@@ -13,7 +13,7 @@ import {
 import { classicalPlotSpec } from "./classical-plot.js";
 import { heatCapacitySpec } from "./heat-capacity.js";
 import { nightOverviewSpec } from "./night-overview.js";
-import { pulsePictureSvg } from "./pulse-picture.js";
+import { type PulseWords, pulsePictureSvg } from "./pulse-picture.js";
 import { renderSvg } from "./render.js";
 
 /** Keys of the campaign's own figures, each a file name without its ending. */
@@ -108,16 +108,22 @@ async function nightFigures(night: NightReport): Promise<Record<string, string>>
       `Total heat capacity of each pulse of ${run} against temperature, flagged pulses marked`,
     );
   for (const picture of night.pictures)
-    figures[pulseKey(run, picture.pulse)] = pulsePictureSvg(
-      picture,
-      pulseLabel(table, picture),
-      table.used[table.pulse.indexOf(picture.pulse)] === 0 ? "left out" : "used",
-    );
+    figures[pulseKey(run, picture.pulse)] = pulsePictureSvg(picture, pulseWords(table, picture));
   return figures;
 }
 
-function pulseLabel(table: PulseTable, picture: PulsePicture): string {
+/** Pictures are of rows of the table; one without a row says only what it shows. */
+function pulseWords(table: PulseTable, picture: PulsePicture): PulseWords {
   const i = table.pulse.indexOf(picture.pulse);
   const step = i < 0 ? Number.NaN : table.dT_K[i]!;
-  return `Pulse ${picture.pulse}: temperature against time, and residuals${Number.isFinite(step) ? `, step ${temperatureText(step)}` : ""}`;
+  const standing = i >= 0 && table.used[i] === 0 ? "left out" : "used";
+  return {
+    label: [
+      `Pulse ${picture.pulse}: temperature against time, and residuals`,
+      ...(Number.isFinite(step) ? [`step ${temperatureText(step)}`] : []),
+      ...(standing === "left out" ? ["left out"] : []),
+    ].join(", "),
+    standing,
+    boundary_time_s: i < 0 ? Number.NaN : table.boundary_time_s[i]!,
+  };
 }

@@ -8,7 +8,7 @@ import type { CampaignReport, NightReport } from "../types.js";
 import { nightAddendaShare, nightNoise_K, percent, temperatureText } from "../words.js";
 import { counted, figure, inline, numbers, table, typeset, words } from "./parts.js";
 
-const METHOD_WORDS = { drift: "drift lines", "two-body": "body and liquid", relaxation: "one body" } as const;
+const METHOD_WORDS = { drift: "drift lines", "two-body": "two bodies", relaxation: "relaxation" } as const;
 const STATUS_WORDS = { reduced: "reduced", reused: "kept from before", failed: "failed" } as const;
 
 function remarks(night: NightReport): Content {
@@ -74,6 +74,28 @@ function doubts(table: PulseTable, i: number): string {
   return [...flags, ...(reason === "" ? [] : [reason])].join("; ");
 }
 
+/** "boundary 9.00(21) s" where a forward model found one. */
+function boundaryText(boundary_time_s: number, u_boundary_time_s: number): readonly string[] {
+  if (!(boundary_time_s > 0)) return [];
+  const found = u_boundary_time_s > 0;
+  return [
+    `boundary ${found ? roundToUncertainty(boundary_time_s, u_boundary_time_s, "concise") : significant(boundary_time_s, 2)} s`,
+  ];
+}
+
+/** What the large picture has below it: what was measured, and what came out. */
+function measured(table: PulseTable, i: number): string {
+  const capacity = table.C_total_J_per_K[i]!;
+  return [
+    `${significant(1e6 * table.Q_J[i]!, 4)} µJ in ${significant(table.duration_s[i]!, 4)} s`,
+    `${withZeros(table.T_before_K[i]!, 5)} to ${withZeros(table.T_after_K[i]!, 5)} K`,
+    ...(Number.isFinite(capacity)
+      ? [`C ${roundToUncertainty(1e3 * capacity, 1e3 * table.u_C_total_J_per_K[i]!, "concise")} mJ/K`]
+      : []),
+  ].join(" · ");
+}
+
+/** One SVG in a disclosure: small among others when closed, across the page when open. */
 function pulseFigure(table: PulseTable, picture: PulsePicture, svg: string | undefined): Markup {
   if (svg === undefined) return NOTHING;
   const i = table.pulse.indexOf(picture.pulse);
@@ -81,19 +103,17 @@ function pulseFigure(table: PulseTable, picture: PulsePicture, svg: string | und
   const facts = [
     `${withZeros(table.T_K[i]!, 4)} K`,
     `ΔT ${temperatureText(table.dT_K[i]!)}`,
-    METHOD_WORDS[table.method[i]!],
-    ...(Number.isFinite(table.boundary_time_s[i]!)
-      ? [`boundary ${significant(table.boundary_time_s[i]!, 2)} s`]
-      : []),
+    ...(picture.windows.length === 0 ? [] : [METHOD_WORDS[table.method[i]!]]),
+    ...boundaryText(table.boundary_time_s[i]!, table.u_boundary_time_s[i]!),
   ].join(" · ");
   const doubt = doubts(table, i);
-  const out = table.used[i] === 0;
-  const standing = out
-    ? html`<br><span class="wrong">left out${doubt === "" ? "" : `: ${doubt}`}</span>`
-    : doubt === ""
-      ? NOTHING
-      : html`<br>${doubt}`;
-  return html`<figure${out ? trusted(' class="out"') : NOTHING}>${trusted(inline(svg))}
+  const standing =
+    table.used[i] === 0
+      ? html`<br><span class="wrong">left out${doubt === "" ? "" : `: ${doubt}`}</span>`
+      : doubt === ""
+        ? NOTHING
+        : html`<br>${doubt}`;
+  return html`<figure><details class="pulse"><summary>${trusted(inline(svg))}</summary><p>${measured(table, i)}</p></details>
 <figcaption><strong>${picture.pulse}</strong> · ${facts}${standing}</figcaption></figure>
 `;
 }
@@ -124,7 +144,7 @@ export function nightsSection(report: CampaignReport, figures: Readonly<Record<s
   return html`<section id="nights"><h2>Nights</h2>
 ${nightsTable(report)}${scatter(report.between_nights)}
 <h3>Every pulse</h3>
-<p>Dots: samples. Lines: drift lines carried on to the step (dashed), or a forward model through all of it. Band: heater on. Time counts from the start of the pulse and is stretched about it: the pulse and its first settling stand between the two marks, the second of which has its time below. Strip: residuals in units of the noise, ±5 from edge to edge, the band ±2; the rule below it spans what was fitted. A cross marks a pulse that is left out.</p>
+<p>Dots: samples. Lines: drift lines carried on to the step (dashed), or a forward model through all of it. Band: heater on. Time is in seconds from the start of the pulse and stretched about it; a gap stands where its scale changes. Strip: residuals in units of the noise, −4 to 4, the band ±2; the rule below it spans what was fitted. Short strokes at an edge lie beyond it. A cross marks a pulse that is left out. Each picture opens large, with axes.</p>
 ${report.nights.map((night, i) => nightDetails(night, i + 1, figures))}</section>
 `;
 }

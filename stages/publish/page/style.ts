@@ -1,3 +1,8 @@
+import { AROUND, SMALL } from "../figures/pulse-picture.js";
+
+/** Per cent of the small picture's width, to which margins and widths on the page refer. */
+const ofSmall = (units: number) => `${Number(((100 * units) / SMALL.width).toFixed(3))}%`;
+
 /** The page's whole style: system faces, one accent, light and dark, phone and paper. */
 export const STYLE = `
 :root {
@@ -70,7 +75,22 @@ summary:focus-visible, a:focus-visible { outline: 2px solid var(--accent); outli
 .night > p, .night > figure { margin: .8rem 0; }
 .pictures { display: grid; grid-template-columns: repeat(auto-fill, minmax(13.5rem, 1fr)); gap: 1.1rem 1.2rem; margin: 1rem 0; }
 .pictures figcaption { font-size: .78rem; margin-top: .1rem; }
-.pictures .out > svg { opacity: .62; }
+.pictures > figure:has(> [open]) { grid-column: 1 / -1; max-width: 46rem; }
+.pulse { border: 0; padding: 0; }
+.pulse > summary { display: block; position: relative; overflow: hidden; cursor: zoom-in; }
+.pulse > summary::-webkit-details-marker { display: none; }
+.pulse > summary::after { content: "+"; content: "+" / ""; position: absolute; top: 0; right: .1rem; line-height: 1; color: var(--soft); }
+.pulse[open] > summary { cursor: zoom-out; }
+.pulse[open] > summary::after { content: "−"; content: "−" / ""; }
+.pulse svg { display: block; width: 100%; height: auto; }
+.pulse:not([open]) svg { width: ${ofSmall(SMALL.width + AROUND.left + AROUND.right)}; max-width: none; margin: ${ofSmall(-AROUND.top)} 0 ${ofSmall(-AROUND.bottom)} ${ofSmall(-AROUND.left)}; }
+.pulse:not([open]) .fine { display: none; }
+.pulse:not([open]) .coarse { display: inline; }
+.pulse:not([open]) .d { stroke-width: 4.5; }
+.pulse:not([open]) .r { stroke-width: 3.5; }
+.pulse:not([open]) .f { stroke-width: 3; }
+.pulse > p { font: .84rem/1.45 var(--sans); color: var(--soft); margin: .3rem 0 -.3rem; }
+.pictures > figure:has(> [open]) > figcaption { font-size: .84rem; }
 .equation { margin: .7rem 0 .7rem 1.2rem; overflow-x: auto; overflow-y: hidden; padding: .2rem 0; }
 math { font-size: 1.08em; width: max-content; margin: 0; }
 pre { font: .8rem/1.45 ui-monospace, Menlo, Consolas, "DejaVu Sans Mono", monospace; background: var(--wash); padding: .8rem 1rem; border-radius: 3px; overflow-x: auto; }
@@ -101,7 +121,8 @@ footer { color: var(--soft); font: .82rem/1.5 var(--sans); margin-top: 3rem; pad
   h2, h3, caption, summary { break-after: avoid; }
   .scroll, pre { overflow: visible; }
   pre { white-space: pre-wrap; }
-  details::details-content { content-visibility: visible; block-size: auto; }
-  .pictures { grid-template-columns: repeat(4, 1fr); }
+  details:not(.pulse)::details-content { content-visibility: visible; block-size: auto; }
+  .pictures { grid-template-columns: repeat(3, 1fr); }
+  .pulse > summary::after, .pulse[open] > summary::after { content: none; }
 }
 `;

@@ -57,6 +57,32 @@ test("every pulse has its picture, flags are in words, and so are vetoes and fai
   expect(page).toContain("thermometer.csv: the log is empty");
 });
 
+test("each picture is one SVG in a disclosure, opened by keyboard as by hand, of at most 6 kB with its words", () => {
+  const figure =
+    /<figure><details class="pulse"><summary><svg[\s\S]*?<\/svg><\/summary><p>[^<]+<\/p><\/details>\n<figcaption>[\s\S]*?<\/figcaption><\/figure>/g;
+  const pictures = campaign.nights.reduce((sum, night) => sum + night.pictures.length, 0);
+  const drawn = page.match(figure)!;
+  expect(drawn).toHaveLength(pictures);
+  for (const each of drawn) expect(Buffer.byteLength(each)).toBeLessThanOrEqual(6000);
+});
+
+test("captions name the method, the boundary time where there is one, and why a pulse is left out", () => {
+  const captions = [...page.matchAll(/<figcaption><strong>(\d+)<\/strong>([\s\S]*?)<\/figcaption>/g)];
+  const of = (pulse: number) =>
+    captions.filter(([, number]) => Number(number) === pulse).map(([, , words]) => words!);
+  for (const words of of(1)) expect(words).toContain("two bodies · boundary 9.00(21) s");
+  for (const words of of(2)) {
+    expect(words).toContain("drift lines");
+    expect(words).not.toContain("boundary");
+  }
+  for (const words of of(4)) expect(words).toContain("left out: vetoed in run.yaml; door slammed");
+  // Nothing was fitted, so no method is named.
+  for (const words of of(9)) {
+    expect(words).toContain("left out: samples missing under the fit");
+    expect(words).not.toContain("drift lines");
+  }
+});
+
 test("the forms stand side by side, with the model's own part of the gap", () => {
   expect(page).toContain("Landau form, phonons T³ T⁵ T⁷");
   // 8.731 K less 8.683 K, the two gaps of the synthetic campaign.

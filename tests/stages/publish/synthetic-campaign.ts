@@ -3,7 +3,12 @@ import { phononSeries_J_per_mol } from "../../../stages/physics/phonon.js";
 import { rotonShape } from "../../../stages/physics/roton.js";
 import { CAUTIONS } from "../../../stages/publish/cautions.js";
 import type { CampaignReport, NightReport } from "../../../stages/publish/types.js";
-import { PulseFlag, type PulsePicture, type PulseTable } from "../../../stages/pulses/types.js";
+import {
+  PulseFlag,
+  type PulseMethod,
+  type PulsePicture,
+  type PulseTable,
+} from "../../../stages/pulses/types.js";
 
 /** Invented, of the size of the real ones. */
 const TRUTH = { u1: 238.3, gap_K: 8.68, amplitude: 19.6, molarVolume: 27.58e-6, amount_mol: 0.1093 };
@@ -23,6 +28,10 @@ export interface CampaignSize {
   readonly nights: number;
   readonly pulsesPerNight: number;
 }
+
+/** Rows of every night that are left out: one by a person, one for want of samples. */
+const VETOED = 3;
+const NOT_FITTED = 8;
 
 /** A campaign from closed forms and seeded noise: sample nights, an empty-cell night and one that failed. */
 export function syntheticCampaign(size: CampaignSize): CampaignReport {
@@ -284,10 +293,14 @@ function sampleNight(run: string, index: number, pulses: number, gauss: () => nu
   const u_C = total.map((C) => 0.006 * C);
   const C_total = total.map((C, i) => C + u_C[i]! * gauss());
   const dT_K = T_K.map((T) => 0.02 * T);
-  const flag = Int32Array.from(T_K, (_, i) =>
-    i === 3 ? PulseFlag.Vetoed : i === 5 ? PulseFlag.Spikes | PulseFlag.Truncated : 0,
-  );
-  const used = Uint8Array.from(T_K, (_, i) => (i === 3 ? 0 : 1));
+  const flags: Readonly<Record<number, number>> = {
+    [VETOED]: PulseFlag.Vetoed,
+    [NOT_FITTED]: PulseFlag.SamplesMissing,
+    5: PulseFlag.Spikes | PulseFlag.Truncated,
+  };
+  const flag = Int32Array.from(T_K, (_, i) => flags[i] ?? 0);
+  const used = Uint8Array.from(T_K, (_, i) => (i === VETOED || i === NOT_FITTED ? 0 : 1));
+  const method = Array.from(T_K, (_, i) => (i % 3 === 0 ? "two-body" : "drift") as PulseMethod);
   const constant = (value: number) => Float64Array.from(T_K, () => value);
   const table: PulseTable = {
     pulse: Int32Array.from(T_K, (_, i) => i + 1),
@@ -305,9 +318,9 @@ function sampleNight(run: string, index: number, pulses: number, gauss: () => nu
     heater_resistance_Ohm: constant(412.3),
     C_total_J_per_K: C_total,
     u_C_total_J_per_K: u_C,
-    method: Array.from(T_K, (_, i) => (i % 3 === 0 ? "two-body" : "drift")),
+    method,
     flag,
-    reason: Array.from(T_K, (_, i) => (i === 3 ? "door slammed" : "")),
+    reason: Array.from(T_K, (_, i) => (i === VETOED ? "door slammed" : "")),
     used,
     noise_K: constant(4.2e-5 * (1 + 0.1 * index)),
     drift_K_per_s: constant(1e-7),
@@ -319,8 +332,10 @@ function sampleNight(run: string, index: number, pulses: number, gauss: () => nu
     aic_relaxation: constant(Number.NaN),
     link_W_per_K: constant(4e-9),
     u_link_W_per_K: constant(Number.NaN),
-    boundary_time_s: constant(Number.NaN),
-    u_boundary_time_s: constant(Number.NaN),
+    boundary_time_s: Float64Array.from(method, (each) =>
+      each === "two-body" ? OVERHEATING.boundary_s : Number.NaN,
+    ),
+    u_boundary_time_s: Float64Array.from(method, (each) => (each === "two-body" ? 0.21 : Number.NaN)),
     boundary_W_per_K: constant(Number.NaN),
     u_boundary_W_per_K: constant(Number.NaN),
     spikes: Int32Array.from(T_K, () => 0),
@@ -340,25 +355,50 @@ function sampleNight(run: string, index: number, pulses: number, gauss: () => nu
 }
 
 function picture(pulse: number, table: PulseTable, i: number, gauss: () => number): PulsePicture {
-  const before = table.T_before_K[i]!;
-  const after = table.T_after_K[i]!;
-  const noise = 0.03 * (after - before);
-  const risen = (t: number) =>
-    t < 0
-      ? before
-      : t < 8
-        ? before + ((after - before) * t) / 8
-        : after + 0.15 * (after - before) * Math.exp(-(t - 8) / 7);
+  const noise_K = 0.03 * table.dT_K[i]!;
+  const drawn =
+    table.method[i] === "two-body"
+      ? overheatingPicture({ pulse, base_K: table.T_before_K[i]!, dT_K: table.dT_K[i]!, noise_K }, gauss)
+      : driftPicture({ pulse, base_K: table.T_before_K[i]!, dT_K: table.dT_K[i]!, noise_K }, gauss);
+  return i === NOT_FITTED ? notFitted(drawn) : drawn;
+}
+
+export interface SyntheticPulse {
+  readonly pulse: number;
+  readonly base_K: number;
+  readonly dT_K: number;
+  readonly noise_K: number;
+}
+
+/** The same samples where nothing was read from them. */
+export function notFitted(picture: PulsePicture): PulsePicture {
+  return {
+    ...picture,
+    method: "drift",
+    residual_K: picture.residual_K.map(() => Number.NaN),
+    noise_K: Number.NaN,
+    fits: [],
+    windows: [],
+    step: null,
+  };
+}
+
+/** Two drift lines of eight seconds of heat. */
+export function driftPicture(
+  { pulse, base_K: before, dT_K, noise_K }: SyntheticPulse,
+  gauss: () => number,
+): PulsePicture {
+  const settling = (t: number) => before + dT_K * (1 + 0.15 * Math.exp(-Math.max(0, t - 8) / 7));
+  const risen = (t: number) => (t < 0 ? before : t < 8 ? before + (dT_K * t) / 8 : settling(t));
   // As the pulses' own pictures are: denser about the pulse.
   const time_s = Float64Array.from({ length: 160 }, (_, j) =>
     j < 40 ? -60 + j : j < 110 ? -20 + 0.6 * (j - 40) : 22 + 3.4 * (j - 110),
   );
-  const settling = (t: number) => after + 0.15 * (after - before) * Math.exp(-Math.max(0, t - 8) / 7);
   const stretch = (from: number, to: number, level: (t: number) => number) => {
     const times = Float64Array.from({ length: 25 }, (_, j) => from + ((to - from) * j) / 24);
     return { time_s: times, temperature_K: times.map(level) };
   };
-  const temperature_K = time_s.map((t) => risen(t) + noise * gauss());
+  const temperature_K = time_s.map((t) => risen(t) + noise_K * gauss());
   return {
     pulse,
     method: "drift",
@@ -367,7 +407,7 @@ function picture(pulse: number, table: PulseTable, i: number, gauss: () => numbe
     residual_K: temperature_K.map((T, j) =>
       time_s[j]! < 0 || time_s[j]! > 8 ? T - risen(time_s[j]!) : Number.NaN,
     ),
-    noise_K: noise,
+    noise_K,
     fits: [stretch(-60, 4, () => before), stretch(4, 188.6, settling)],
     windows: [
       { from_s: -60, to_s: 0 },
@@ -375,5 +415,66 @@ function picture(pulse: number, table: PulseTable, i: number, gauss: () => numbe
     ],
     step: { time_s: 4, from_K: before, to_K: settling(4) },
     duration_s: 8,
+  };
+}
+
+/** A light body between heater and liquid: it runs ahead of the liquid while heated, then both leak to the stage. */
+export const OVERHEATING = {
+  body_share: 0.3,
+  boundary_s: 9,
+  link_s: 1400,
+  duration_s: 5,
+  from_s: -150,
+  to_s: 900,
+} as const;
+
+/**
+ * Body b with heater and thermometer, liquid l behind a boundary, a weak link from b to the stage; with θ above the stage
+ * C_b θ_b' = P − g(θ_b − θ_l) − kθ_b and C_l θ_l' = g(θ_b − θ_l). Closed form: two exponentials, from the eigenvalues.
+ * @returns θ_b of heat of one in the time `duration_s`, in units of the rise of both together without the link
+ */
+export function overheating(t: number): number {
+  const { body_share: b, boundary_s, link_s, duration_s } = OVERHEATING;
+  // C_b + C_l = 1. The difference of the two decays with g(1/C_b + 1/C_l) = 1/boundary_s, both with k = 1/link_s.
+  const g = (b * (1 - b)) / boundary_s;
+  const k = 1 / link_s;
+  const [a11, a22] = [-(g + k) / b, -g / (1 - b)];
+  const middle = (a11 + a22) / 2;
+  const half = Math.sqrt(((a11 - a22) / 2) ** 2 + (g * g) / (b * (1 - b)));
+  const [fast, slow] = [middle - half, middle + half];
+  const weight = (a11 - slow) / (fast - slow);
+  const rise = (s: number) =>
+    s <= 0 ? 0 : (weight * Math.expm1(fast * s)) / fast + ((1 - weight) * Math.expm1(slow * s)) / slow;
+  return (rise(t) - rise(t - duration_s)) / (b * duration_s);
+}
+
+/** The forward model of such a cell, through everything, with its own noise. */
+export function overheatingPicture(
+  { pulse, base_K, dT_K, noise_K }: SyntheticPulse,
+  gauss: () => number,
+): PulsePicture {
+  const { duration_s, from_s, to_s } = OVERHEATING;
+  const model = (t: number) => base_K + dT_K * overheating(t);
+  // Closest about the pulse.
+  const time_s = Float64Array.from({ length: 159 }, (_, j) =>
+    j < 40
+      ? from_s + 3.4 * j
+      : j < 100
+        ? -15 + 0.5 * (j - 39)
+        : 15.5 + (to_s - 15.5) * ((j - 100) / 58) ** 1.6,
+  );
+  const temperature_K = time_s.map((t) => model(t) + noise_K * gauss());
+  const block_s = time_s.filter((_, j) => j > 1 && j < 157);
+  return {
+    pulse,
+    method: "two-body",
+    time_s,
+    temperature_K,
+    residual_K: temperature_K.map((T, j) => (j > 1 && j < 157 ? T - model(time_s[j]!) : Number.NaN)),
+    noise_K,
+    fits: [{ time_s: block_s, temperature_K: block_s.map(model) }],
+    windows: [{ from_s: block_s[0]!, to_s: block_s.at(-1)! }],
+    step: { time_s: duration_s / 2, from_K: base_K, to_K: base_K + dT_K },
+    duration_s,
   };
 }

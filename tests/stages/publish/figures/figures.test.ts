@@ -2,7 +2,6 @@ import { expect, test } from "vitest";
 import { classicalLines } from "../../../../stages/publish/figures/classical-lines.js";
 import { overviewKey, pulseKey, renderFigures } from "../../../../stages/publish/figures/figures.js";
 import { svgToPng } from "../../../../stages/publish/figures/png.js";
-import { pulsePictureSvg } from "../../../../stages/publish/figures/pulse-picture.js";
 import { expectRelative } from "../../../expect-relative.js";
 import { syntheticCampaign } from "../synthetic-campaign.js";
 
@@ -86,50 +85,20 @@ test("a night's overview tells used, flagged and left-out pulses apart", () => {
   expect(total(marks(svg, "symbol"))).toBe(12);
 });
 
-test("each pulse has a picture of at most 5 kB, of its samples, fits, step and residuals", () => {
-  const night = campaign.nights[1]!;
-  for (const picture of night.pictures) {
-    const svg = figures[pulseKey(night.run, picture.pulse)]!;
-    expect(Buffer.byteLength(svg)).toBeLessThanOrEqual(5000);
-    const residuals = picture.residual_K.filter(Number.isFinite).length;
-    expect(svg.match(/h0/g)).toHaveLength(picture.time_s.length + residuals);
-    expect(svg).toContain("stroke-dasharray");
-    expect(svg).toContain("−60 s");
-  }
-});
-
-test("a residual of three noises stands at its height, one of a hundred at the edge, and a pulse left out is crossed", () => {
-  const picture = campaign.nights[1]!.pictures[0]!;
-  const flat = picture.residual_K.map(() => 0);
-  const heights = (first: number): number[] => {
-    const residual_K = flat.slice();
-    residual_K[0] = first * picture.noise_K;
-    const svg = pulsePictureSvg({ ...picture, residual_K }, "a pulse");
-    // The strip's own dots: M x y of the first, then the step to the second, which is on the line of zero.
-    const path = svg.match(/stroke-width="3.5"[^>]*>/g);
-    expect(path).not.toBeNull();
-    const strip = [
-      ...svg.matchAll(/<path d="M(\d+) (\d+)h0[^"]*" stroke="currentColor" stroke-width="3.5"/g),
-    ];
-    return strip.map((match) => Number(match[2]));
-  };
-  // From 302 at −5 to 222 at +5, eight units each.
-  expect(heights(3)).toEqual([238]);
-  expect(heights(-1)).toEqual([270]);
-  expect(heights(100)).toEqual([222]);
-  expect(pulsePictureSvg(picture, "out", "left out")).toContain("l22 22m0-22l-22 22");
-  expect(pulsePictureSvg(picture, "in")).not.toContain("l22 22m0-22l-22 22");
-});
-
-test("a pulse without fits, or without samples, is still drawn", () => {
-  const none = { time_s: new Float64Array(0), temperature_K: new Float64Array(0) };
-  const picture = campaign.nights[1]!.pictures[0]!;
-  for (const poor of [
-    { ...picture, fits: [], windows: [], step: null },
-    { ...picture, ...none, residual_K: none.time_s, fits: [none], windows: [], step: null },
-    { ...picture, temperature_K: picture.temperature_K.map(() => Number.NaN) },
-  ])
-    expect(pulsePictureSvg(poor, "a <pulse>")).not.toMatch(/NaN|undefined|Infinity|<pulse>/);
+test("each pulse has a picture; the table says which is left out, and how long the boundary takes", () => {
+  const { run, pictures, table } = campaign.nights[1]!;
+  expect(pictures).toHaveLength(12);
+  pictures.forEach((picture, i) => {
+    const svg = figures[pulseKey(run, picture.pulse)]!;
+    const out = table!.used[i] === 0;
+    expect(svg.includes(">left out<")).toBe(out);
+    expect(svg.match(/aria-label="([^"]*)"/)![1]).toMatch(
+      out ? /^Pulse \d+: .*, left out$/ : /^Pulse \d+: .*, step [\d.]+ mK$/,
+    );
+    // Four boundary times of 9 s after 5 s of heat, rounded up: the joint is at 50 s.
+    if (picture.method === "two-body") expect(svg).toMatch(/>50</);
+  });
+  expect(pictures.filter(({ method }) => method === "two-body")).toHaveLength(4);
 });
 
 test("a night that failed and a separation without results leave their figures out", async () => {
