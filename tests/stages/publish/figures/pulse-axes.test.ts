@@ -57,17 +57,36 @@ test("spans that begin with the pulse, end within it or miss it have fewer piece
   expect(spans(3, 3)).toEqual([[3, 4]]);
 });
 
-test("ticks are round times at their places; words do not run into each other, and joints have theirs", () => {
+test("ticks are round times at their places, and joints have theirs", () => {
   const pieces = timePieces({ from_s: -1080, to_s: 990 }, { duration_s: 20, settled_s: 0 }, 4, 476);
   const ticks = timeTicks(pieces);
   for (const { at, words } of ticks)
     if (words !== "") expect(placeTime(pieces, Number(words.replace("−", "-")))).toBeCloseTo(at, 6);
   const spoken = ticks.filter(({ words }) => words !== "");
   expect(spoken.map(({ words }) => words)).toEqual(expect.arrayContaining(["−1000", "0", "20", "60", "800"]));
-  // Half of both words, at 7.6 units a letter.
-  for (let i = 1; i < spoken.length; i++) {
-    const [a, b] = [spoken[i - 1]!, spoken[i]!];
-    expect(b.at - a.at).toBeGreaterThan((7.6 * (a.words.length + b.words.length)) / 2);
+});
+
+test("words on one axis do not run into each other", () => {
+  const spans = [
+    [-1080, 990, 20, 0],
+    [-300, 900, 0.2, 80],
+    [-150, 900, 5, 41],
+    [-145, 330, 30, 0],
+    [-60, 190, 8, 8],
+    [-7, 31, 1.5, 0],
+    // Five letters to a tick before, and a tick just below the end of the pulse.
+    [-3000, 4000, 5.6, 100],
+  ] as const;
+  for (const [from_s, to_s, duration_s, settled_s] of spans) {
+    const spoken = timeTicks(timePieces({ from_s, to_s }, { duration_s, settled_s }, 4, 476)).filter(
+      ({ words }) => words !== "",
+    );
+    expect(spoken.length).toBeGreaterThan(5);
+    // Half of both words, at 7.6 units a letter: the widest of the faces in figures/look.ts.
+    for (let i = 1; i < spoken.length; i++) {
+      const [a, b] = [spoken[i - 1]!, spoken[i]!];
+      expect(b.at - a.at).toBeGreaterThan((7.6 * (a.words.length + b.words.length)) / 2);
+    }
   }
 });
 
